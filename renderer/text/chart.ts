@@ -1,0 +1,15 @@
+export const chart = {
+  abscissa: 'wavenumber / cm⁻¹',
+  residual: 'obs − calc',
+  handedIn: 'handed in',
+  tools: 'View of the spectrum',
+  band: 'Band',
+  full: 'Full range',
+  zoomIn: 'Zoom in',
+  zoomOut: 'Zoom out',
+  savePicture: 'Save PNG',
+  saveFigures: 'Save CSV',
+  hint: 'Left and right arrow move along the spectrum, plus and minus zoom, B shows the band, 0 the full range. The same by wheel, by dragging, and by dragging with Shift over a range.',
+  spectrumOf: 'Spectrum {file}: {lines} lines assigned, {out} of them left out',
+  previewOf: 'Preview of the spectrum {file}',
+} as const;
