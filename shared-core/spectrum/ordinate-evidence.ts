@@ -1,0 +1,98 @@
+/** What the numbers of an ordinate show without any label. */
+export interface OrdinateEvidence {
+  /** Values below which 2 %, 8 %, 50 %, 92 %, 98 % of the points lie. */
+  readonly low: number;
+  readonly lowBase: number;
+  readonly middle: number;
+  readonly highBase: number;
+  readonly high: number;
+  readonly least: number;
+  readonly greatest: number;
+  /** Where sharp features point: 'none' where neither side stands out. */
+  readonly direction: 'up' | 'down' | 'none';
+  readonly looksLikeInterferogram: boolean;
+}
+
+function sampled(y: Float64Array, most: number): Float64Array {
+  const stride = Math.max(1, Math.floor(y.length / most));
+  const sample = new Float64Array(Math.ceil(y.length / stride));
+  for (let i = 0; i < sample.length; i++) sample[i] = y[i * stride]!;
+  return sample.sort();
+}
+
+/** How far the features of blocks of this many points stand out above and below their middle. */
+function excursions(y: Float64Array, block: number): { up: number; down: number } {
+  let up = 0;
+  let down = 0;
+  for (let from = 0; from + block <= y.length; from += block) {
+    const sorted = y.slice(from, from + block).sort();
+    const middle = sorted[block >> 1]!;
+    // The second value from each end: a single spike decides nothing.
+    up += (sorted[block - 2]! - middle) ** 2;
+    down += (middle - sorted[1]!) ** 2;
+  }
+  return { up: Math.sqrt(up), down: Math.sqrt(down) };
+}
+
+function directionOf(y: Float64Array): OrdinateEvidence['direction'] {
+  let best = 0;
+  for (const block of [32, 128, 512]) {
+    if (y.length < 2 * block) continue;
+    const stretch = y.length > 60_000 ? y.subarray(0, y.length) : y;
+    const { up, down } = excursions(stretch, block);
+    if (up + down === 0) continue;
+    const tilt = (up - down) / (up + down);
+    if (Math.abs(tilt) > Math.abs(best)) best = tilt;
+  }
+  if (Math.abs(best) < 0.15) return 'none';
+  return best > 0 ? 'up' : 'down';
+}
+
+/** A burst that swings to both sides of the mean several times, with quiet on both sides of it. */
+function looksLikeInterferogram(y: Float64Array, middle: number): boolean {
+  let largest = 0;
+  let at = 0;
+  let sum = 0;
+  for (let i = 0; i < y.length; i++) {
+    const size = Math.abs(y[i]! - middle);
+    sum += size;
+    if (size > largest) {
+      largest = size;
+      at = i;
+    }
+  }
+  if (largest === 0 || sum / y.length > 0.05 * largest) return false;
+  let swings = 0;
+  let last = 0;
+  for (let i = Math.max(0, at - 40); i < Math.min(y.length, at + 41); i++) {
+    const value = y[i]! - middle;
+    const side = Math.abs(value) > 0.12 * largest ? Math.sign(value) : 0;
+    if (side !== 0 && side !== last) {
+      swings++;
+      last = side;
+    }
+  }
+  return swings >= 5;
+}
+
+export function ordinateEvidence(y: Float64Array): OrdinateEvidence {
+  const sorted = sampled(y, 20_000);
+  const quantile = (share: number): number => sorted[Math.floor(share * (sorted.length - 1))]!;
+  let least = Infinity;
+  let greatest = -Infinity;
+  for (const value of y) {
+    if (value < least) least = value;
+    if (value > greatest) greatest = value;
+  }
+  return {
+    low: quantile(0.02),
+    lowBase: quantile(0.08),
+    middle: quantile(0.5),
+    highBase: quantile(0.92),
+    high: quantile(0.98),
+    least,
+    greatest,
+    direction: directionOf(y),
+    looksLikeInterferogram: looksLikeInterferogram(y, quantile(0.5)),
+  };
+}
