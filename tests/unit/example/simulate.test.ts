@@ -116,7 +116,9 @@ describe('simulated spectrum', () => {
         fromPerCm: origin - 300,
         toPerCm: origin + 300,
       });
-      expect(s.truth.bands[0]!.lines.filter((line) => line.peakAbsorbance > 0.02).length).toBeGreaterThanOrEqual(12);
+      expect(
+        s.truth.bands[0]!.lines.filter((line) => line.peakAbsorbance > 0.02).length,
+      ).toBeGreaterThanOrEqual(12);
       expect(s.transmittance.every(Number.isFinite)).toBe(true);
     }
   });

@@ -1,0 +1,56 @@
+/** What is done wrong, by the stage at which it happens; codes are those of the slip catalogue. */
+export const slipStages = {
+  lines: [
+    'numbering-all-shift',
+    'branches-swapped',
+    'numbering-r-from-zero',
+    'numbering-r-shift',
+    'numbering-p-shift',
+    'isotope-heavy-lines',
+    'isotope-averaged',
+    'maxima-read',
+  ],
+  fit: ['distortion-left-out', 'branch-in-j'],
+  constants: [
+    'bbar-as-be',
+    'b0-as-be',
+    'b1-as-be',
+    'r0-as-re',
+    'alpha-sign',
+    'alpha-half',
+    'alpha-double',
+    'be-minus-half-alpha',
+    'be-plus-alpha',
+    'spacing-2b-as-b',
+    'spacing-2b-as-4b',
+    'bbar-as-b0',
+    'origin-midpoint',
+    'origin-line',
+  ],
+  vibration: ['k-from-nu0', 'k-from-omega'],
+  powers: [
+    'c-in-m',
+    'hbar-for-h',
+    'pi-eight',
+    'k-no-two-pi',
+    'k-one-two-pi',
+    'r-root-missed',
+    'mass-average',
+    'mass-integer',
+    'mass-other-isotope',
+    'mass-sum',
+    'mass-light-atom',
+    'mass-grams',
+  ],
+  reporting: [
+    'unit-r',
+    'unit-k',
+    'power-of-ten',
+    'digits-swapped',
+    'fields-swapped',
+    'value-from-literature',
+  ],
+} as const;
+
+export type SlipCode = (typeof slipStages)[keyof typeof slipStages][number];
+export const slipCodes: readonly SlipCode[] = Object.values(slipStages).flat();
