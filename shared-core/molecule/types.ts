@@ -28,7 +28,10 @@ export interface PublishedConstants {
   readonly omegaEyePerCm: number;
   readonly rotationalConstantEquilibriumPerCm: number;
   readonly alphaEPerCm: number;
+  readonly gammaEPerCm: number;
   readonly centrifugalConstantPerCm: number;
+  /** No 1-Sigma state (NO): this model only averages its lines. */
+  readonly openShell: boolean;
   readonly source: string;
 }
 

@@ -81,6 +81,8 @@ export interface FileReference {
   readonly isotopologues: Readonly<Record<string, Constants>>;
   /** Reliability of each isotopologue by itself (an overtone alone or a faint partner may be worse than the main one). */
   readonly isotopologueReliability: Readonly<Record<string, Reliability>>;
+  readonly isotopologueReasons: Readonly<Record<string, readonly Reason[]>>;
+  readonly isotopologueChecks: Readonly<Record<string, readonly ReferenceCheck[]>>;
   readonly runnerUp: RunnerUp | null;
   readonly lines: readonly AssignedLine[];
   /** How the best estimate was made: D tied or free, H held or free, weights, scale of sigma, lines used. */
