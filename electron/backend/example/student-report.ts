@@ -69,6 +69,7 @@ export function writeDown(
   random: Random,
 ): Partial<Record<QuantityKey, string>> {
   let values = { ...standard };
+  const more = random.uniform() < 0.4 ? 1 : 0;
   const copied = slips.has('value-from-literature') ? (handbook[course.isotopologue] ?? {}) : {};
   // The copier takes alphaE and at times Be with it.
   const taken: QuantityKey[] = random.uniform() < 0.5 ? ['alphaE'] : ['alphaE', 'Be'];
@@ -77,7 +78,6 @@ export function writeDown(
   const shifted = random.pick(keys.filter((key) => key !== 'nu0' && key !== 'omegaE'));
   const mixed = random.pick(keys);
   const power = random.pick([-2, -1, 1, 2, 3]);
-  const more = random.uniform() < 0.4 ? 1 : 0;
   return Object.fromEntries(
     keys.map((key) => {
       let value = values[key]!;

@@ -15,6 +15,8 @@ import type { SlipCode } from './student-slips.ts';
 
 export interface StudentOptions {
   readonly seed: number;
+  /** Seed of the way in which slips play out; `seed` where absent. */
+  readonly slipSeed?: number;
   readonly course: Course;
   readonly spectrum: SimulatedSpectrum;
   readonly habits: ReadingHabits;
@@ -51,12 +53,13 @@ export function studentWork(options: StudentOptions): StudentWork {
     (band) => band.gas === course.gas && band.isotopologue !== course.isotopologue,
   );
   const lines: StudentLines = { asked: read(course.isotopologue), heavy: read(partner?.isotopologue) };
-  const values = analyse(lines, course, slips, createRandom(seed, 42));
+  const slipSeed = options.slipSeed ?? seed;
+  const values = analyse(lines, course, slips, createRandom(slipSeed, 42));
   const unslipped = analyse(lines, course, new Set(), createRandom(seed, 42));
   const write = (of: StudentValues, which: ReadonlySet<SlipCode>): StudentWork['texts'] =>
-    writeDown(of, course, options.units, which, createRandom(seed, 43));
+    writeDown(of, course, options.units, which, createRandom(slipSeed, 43));
   return {
-    lines: slippedLines(lines, (code) => slips.has(code), createRandom(seed, 42)),
+    lines: slippedLines(lines, (code) => slips.has(code), createRandom(slipSeed, 42)),
     texts: write(values, slips),
     values,
     unslipped,
