@@ -84,10 +84,11 @@ export default {
   options: {
     tsPreCompilationDeps: true,
     doNotFollow: { path: 'node_modules' },
-    tsConfig: { fileName: 'tsconfig.json' },
+    tsConfig: { fileName: 'tests/tsconfig.json' },
     enhancedResolveOptions: {
       extensions: ['.ts', '.mjs', '.js', '.vue', '.json'],
-      conditionNames: ['import', 'types', 'default'],
+      conditionNames: ['import', 'require', 'node', 'default', 'types'],
+      mainFields: ['module', 'main', 'types'],
     },
   },
 };
