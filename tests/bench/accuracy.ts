@@ -1,143 +1,52 @@
-import { createRandom } from '../../electron/backend/example/random.ts';
-import { simulateSpectrum, type SimulationOptions } from '../../electron/backend/example/simulate.ts';
-import { makeReference } from '../../shared-core/reference/index.ts';
-import { cramerRaoBounds } from './bound.ts';
-import { benchSettings, errorsOf, fileOf, isWrong, type Errors } from './judge.ts';
-import { printTable } from './print.ts';
+import { accuracyCases, type AccuracyRecord, type AccuracyTask } from './accuracy-cases.ts';
+import { percent, printTable } from './print.ts';
+import { spread } from './spread.ts';
 
-interface AccuracyCase {
-  readonly name: string;
-  readonly limit: string;
-  readonly options: (seed: number) => SimulationOptions;
-}
-
-const common = (seed: number) => {
-  const random = createRandom(seed, 11);
-  return {
-    seed,
-    peakAbsorbance: 0.8 * 4 ** random.uniform(),
-    lorentzHalfWidthPerCm: random.between(0.025, 0.06),
-    /** The grid of points falls differently on the lines in every file. */
-    shift: random.uniform(),
-  };
-};
-
-function fundamental(
-  gas: 'HCl' | 'DCl' | 'CO',
-  range: readonly [number, number],
-  changes: Partial<SimulationOptions> = {},
-): (seed: number) => SimulationOptions {
-  return (seed) => {
-    const { peakAbsorbance, lorentzHalfWidthPerCm, shift } = common(seed);
-    return {
-      seed,
-      gases: [{ gas, peakAbsorbance, deviation: 1e-5 }],
-      fromPerCm: range[0] + shift,
-      toPerCm: range[1] + shift,
-      lorentzHalfWidthPerCm,
-      resolutionPerCm: 0.5,
-      apodisation: 'raised-cosine',
-      zeroFilling: 2,
-      noise: 1e-3,
-      ...changes,
-    };
-  };
-}
-
-const hydrogenChloride = [2650, 3090] as const;
-export const accuracyCases: readonly AccuracyCase[] = [
-  { name: 'HCl 0.5', limit: '1.3', options: fundamental('HCl', hydrogenChloride) },
-  { name: 'DCl 0.5', limit: '1.3', options: fundamental('DCl', [1930, 2230]) },
-  { name: 'CO 0.5', limit: '1.3', options: fundamental('CO', [2030, 2260]) },
-  {
-    name: 'HCl 1.0 half resolved',
-    limit: '2.6',
-    options: fundamental('HCl', hydrogenChloride, { resolutionPerCm: 1, noise: 5e-4 }),
-  },
-  {
-    name: 'HCl 0.5 boxcar',
-    limit: 'aim 2',
-    options: fundamental('HCl', hydrogenChloride, { apodisation: 'boxcar' }),
-  },
-  {
-    name: 'HCl 0.5 correlated noise',
-    limit: 'printed',
-    options: fundamental('HCl', hydrogenChloride, { noiseModel: 'interferogram' }),
-  },
-];
-
-const keys = ['bandOriginPerCm', 'rotationalConstantEquilibriumPerCm', 'alphaEPerCm'] as const;
+const rms = (values: readonly number[]): string =>
+  values.length === 0 ? '-' : Math.sqrt(values.reduce((sum, v) => sum + v * v, 0) / values.length).toFixed(2);
+const below = (pulls: readonly number[], limit: number): number =>
+  pulls.filter((pull) => pull < limit).length;
 
 /** RMS error over the Cramer-Rao bound and coverage of the stated intervals, per case. */
-export function benchAccuracy(count: number, only: string | null): void {
+export async function benchAccuracy(count: number, only: string | null, workers: number): Promise<void> {
+  const measurement = {
+    module: new URL('./accuracy-cases.ts', import.meta.url).href,
+    name: 'measureAccuracy',
+  };
   const rows: string[][] = [];
-  const coverage = { one: 0, two: 0, of: 0 };
-  for (const each of accuracyCases) {
+  const counted: number[] = [];
+  for (const [caseIndex, each] of accuracyCases.entries()) {
     if (only !== null && !each.name.includes(only)) continue;
-    const ratios = { bandOriginPerCm: [], rotationalConstantEquilibriumPerCm: [], alphaEPerCm: [] } as Record<
-      keyof Errors,
-      number[]
-    >;
-    const pulls: number[] = [];
-    let [sound, absent, wrong, milliseconds] = [0, 0, 0, 0];
-    for (let i = 0; i < count; i++) {
-      const spectrum = simulateSpectrum(each.options(1000 + i));
-      const truth = spectrum.truth.bands[0]!;
-      const bound = cramerRaoBounds(spectrum).get(`${truth.isotopologue}/1-0`)!;
-      const file = fileOf(spectrum);
-      const started = performance.now();
-      const reference = makeReference({ files: [file], settings: benchSettings });
-      milliseconds += performance.now() - started;
-      if (reference.reliability === 'sound') sound++;
-      const constants = reference.isotopologues[truth.isotopologue];
-      const errors = constants ? errorsOf(constants, truth) : null;
-      if (!constants || !errors) {
-        absent++;
-        console.error(
-          `${each.name} seed ${1000 + i}: no constants (${reference.reasons.map((r) => r.code).join(' ')})`,
-        );
-        continue;
-      }
-      if (isWrong(errors, truth)) {
-        wrong++;
-        console.error(
-          `${each.name} seed ${1000 + i}: ${reference.reliability} and wrong ${JSON.stringify(errors)}`,
-        );
-        continue;
-      }
-      const stated = [constants.nu0, constants.Be, constants.alphaE];
-      keys.forEach((key, k) => {
-        ratios[key].push(errors[key] / bound[key]);
-        const uncertainty = stated[k]?.uncertainty;
-        if (uncertainty) pulls.push(Math.abs(errors[key]) / uncertainty);
-      });
-    }
-    const share = (limit: number): number => pulls.filter((pull) => pull < limit).length;
-    if (each.limit !== 'printed') {
-      coverage.one += share(1);
-      coverage.two += share(2);
-      coverage.of += pulls.length;
-    }
-    const rms = (values: readonly number[]): string =>
-      Math.sqrt(values.reduce((sum, v) => sum + v * v, 0) / values.length).toFixed(2);
+    const tasks = Array.from({ length: count }, (_, i): AccuracyTask => ({ caseIndex, seed: 1000 + i }));
+    const records = await spread<AccuracyTask, AccuracyRecord>(measurement, tasks, workers);
+    records.forEach((record, i) => {
+      if (record.ratios && !record.wrong) return;
+      const what = record.ratios
+        ? `and wrong (ratios ${record.ratios.map((r) => r.toFixed(1)).join(', ')})`
+        : 'without constants';
+      console.error(`accuracy ${each.name} seed ${1000 + i}: ${record.reliability} ${what} ${record.codes}`);
+    });
+    const right = records.filter((record) => record.ratios && !record.wrong);
+    const pulls = right.flatMap((record) => record.pulls);
+    if (each.counted) counted.push(...pulls);
     rows.push([
       each.name,
-      ...keys.map((key) => rms(ratios[key])),
+      ...[0, 1, 2].map((k) => rms(right.map((record) => record.ratios![k]!))),
       each.limit,
-      `${((100 * share(1)) / pulls.length).toFixed(1)} %`,
-      `${((100 * share(2)) / pulls.length).toFixed(1)} %`,
-      `${sound}/${count}`,
-      `${absent}`,
-      `${wrong}`,
-      `${(milliseconds / count).toFixed(0)} ms`,
+      percent(below(pulls, 1), pulls.length),
+      percent(below(pulls, 2), pulls.length),
+      `${records.filter((record) => record.reliability === 'sound').length}/${count}`,
+      `${records.filter((record) => !record.ratios).length}`,
+      `${records.filter((record) => record.wrong).length}`,
+      `${(records.reduce((sum, record) => sum + record.milliseconds, 0) / count).toFixed(0)} ms`,
     ]);
   }
   printTable(
-    `Accuracy: RMS error over the Cramer-Rao bound, ${count} spectra per case`,
+    `Accuracy: RMS error over the Cramer-Rao bound, ${count} spectra per case (wrong ones not in the RMS)`,
     ['case', 'nu0', 'Be', 'alphaE', 'limit', '1 sigma', '2 sigma', 'sound', 'absent', 'wrong', 'time'],
     rows,
   );
   console.log(
-    `Honesty over ${coverage.of} results: 1 sigma covers ${((100 * coverage.one) / coverage.of).toFixed(1)} % (62-74), 2 sigma ${((100 * coverage.two) / coverage.of).toFixed(1)} % (92-98)`,
+    `Honesty over ${counted.length} results of the first four: 1 sigma covers ${percent(below(counted, 1), counted.length)} (62-74), 2 sigma ${percent(below(counted, 2), counted.length)} (92-98)`,
   );
 }

@@ -1,136 +1,16 @@
 import { createRandom } from '../../electron/backend/example/random.ts';
 import { writeSpectrum } from '../../electron/backend/example/file-writer.ts';
 import { simulateSpectrum } from '../../electron/backend/example/simulate.ts';
-import { makeReference } from '../../shared-core/reference/index.ts';
+import { makeReference } from '../../shared-core/reference/make-reference.ts';
 import type { FileReference } from '../../shared-core/reference/types.ts';
 import type { SourceFile } from '../../shared-core/spectrum/types.ts';
-import { cramerRaoBounds } from './bound.ts';
 import { injectedCauses, negativeControls } from './controls.ts';
-import { drawEnvelope } from './envelope.ts';
-import { benchSettings, boundAllows, exactStyle, falsehoods, fileOf } from './judge.ts';
-import { percent, printTable } from './print.ts';
+import { benchEnvelope } from './robust-envelope.ts';
+import { benchSettings, exactStyle, falsehoods, fileOf } from './judge.ts';
+import { printTable } from './print.ts';
 
 function reference(file: SourceFile): FileReference {
   return makeReference({ files: [file], settings: benchSettings });
-}
-const codes = (made: FileReference): string =>
-  [...new Set(made.reasons.map((reason) => reason.code))].join(' ');
-
-interface Tally {
-  of: number;
-  sound: number;
-  check: number;
-  none: number;
-  wrong: number;
-  allowed: number;
-  allowedSound: number;
-  milliseconds: number;
-}
-const empty = (): Tally => ({
-  of: 0,
-  sound: 0,
-  check: 0,
-  none: 0,
-  wrong: 0,
-  allowed: 0,
-  allowedSound: 0,
-  milliseconds: 0,
-});
-
-/** The envelope: share sound, sound and wrong, and the share that the Cramer-Rao bound itself allows. */
-export function benchEnvelope(count: number, firstSeed = 50_000): void {
-  const tallies = new Map<string, Tally>();
-  const reasons = new Map<string, number>();
-  for (let i = 0; i < count; i++) {
-    const seed = firstSeed + i;
-    const draw = drawEnvelope(seed);
-    const spectrum = simulateSpectrum(draw.options);
-    const started = performance.now();
-    let made: FileReference;
-    try {
-      made = reference(fileOf(spectrum, draw.style, draw.clipAbsorbance));
-    } catch (error) {
-      console.error(`envelope seed ${seed}: threw ${String(error)}`);
-      continue;
-    }
-    const spent = performance.now() - started;
-    const main = spectrum.truth.bands[0]!;
-    const bounds = cramerRaoBounds(spectrum);
-    const allowed = spectrum.truth.bands.some((band) => {
-      const bound = bounds.get(`${band.isotopologue}/${band.band}`);
-      return bound !== undefined && boundAllows(bound, band);
-    });
-    const false_ = falsehoods(made, spectrum.truth.bands);
-    for (const sentence of false_) {
-      console.error(`envelope seed ${seed}: SOUND AND WRONG ${sentence} ${JSON.stringify(draw.options)}`);
-    }
-    if (made.reliability !== 'sound' && allowed) {
-      console.error(`envelope seed ${seed}: ${made.reliability} (${codes(made)}) ${describe(draw.options)}`);
-    }
-    for (const key of ['all', main.gas, `resolution ${String(draw.options.resolutionPerCm)}`]) {
-      const tally = tallies.get(key) ?? empty();
-      tally.of++;
-      tally[made.reliability]++;
-      tally.wrong += false_.length > 0 ? 1 : 0;
-      tally.allowed += allowed ? 1 : 0;
-      tally.allowedSound += allowed && made.reliability === 'sound' ? 1 : 0;
-      tally.milliseconds += spent;
-      tallies.set(key, tally);
-    }
-    if (made.reliability !== 'sound') {
-      for (const code of new Set(made.reasons.map((reason) => reason.code))) {
-        reasons.set(code, (reasons.get(code) ?? 0) + 1);
-      }
-    }
-  }
-  printTable(
-    `Robustness: ${count} spectra of the whole envelope (sound at least 85 %, sound and wrong none)`,
-    [
-      'class',
-      'spectra',
-      'sound',
-      'check',
-      'none',
-      'sound and wrong',
-      'bound allows',
-      'sound of these',
-      'time',
-    ],
-    [...tallies]
-      .sort(([a], [b]) => a.localeCompare(b))
-      .map(([name, t]) => [
-        name,
-        `${t.of}`,
-        percent(t.sound, t.of),
-        percent(t.check, t.of),
-        percent(t.none, t.of),
-        `${t.wrong}`,
-        percent(t.allowed, t.of),
-        percent(t.allowedSound, t.allowed),
-        `${(t.milliseconds / t.of).toFixed(0)} ms`,
-      ]),
-  );
-  printTable(
-    'Reasons where not sound',
-    ['reason', 'spectra'],
-    [...reasons].sort((a, b) => b[1] - a[1]).map(([code, n]) => [code, `${n}`]),
-  );
-}
-
-function describe(o: ReturnType<typeof drawEnvelope>['options']): string {
-  return [
-    o.gases.map((g) => `${g.gas} A${g.peakAbsorbance.toFixed(2)}`).join('+'),
-    `res ${o.resolutionPerCm} ${o.apodisation} zf ${o.zeroFilling}`,
-    `noise ${o.noise?.toExponential(1)} ${o.noiseModel}`,
-    `width ${o.lorentzHalfWidthPerCm?.toFixed(3)}`,
-    o.fringes ? `fringes ${o.fringes.amplitude.toFixed(3)}/${o.fringes.periodPerCm.toFixed(0)}` : '',
-    o.foreign?.water ? `water ${o.foreign.water.toFixed(2)}` : '',
-    o.detectorFloor ? `floor ${o.detectorFloor.toFixed(3)}` : '',
-    o.phaseErrorRad ? `phase ${o.phaseErrorRad.toFixed(3)}` : '',
-    o.spikes ? 'spikes' : '',
-  ]
-    .filter((part) => part !== '')
-    .join(', ');
 }
 
 /** Negative controls: never sound. */
@@ -210,8 +90,8 @@ export function benchCauses(count: number): void {
   );
 }
 
-export function benchRobust(count: number): void {
-  benchEnvelope(count);
+export async function benchRobust(count: number, workers: number): Promise<void> {
+  await benchEnvelope(count, workers);
   benchControls(Math.max(1, Math.round(count / 100)));
   benchCauses(Math.max(1, Math.round(count / 100)));
 }

@@ -5,7 +5,7 @@ import { join } from 'node:path';
 import { simulateSpectrum, type SimulationOptions } from '../../electron/backend/example/simulate.ts';
 import { assignLines } from '../../shared-core/assignment/index.ts';
 import { findLines } from '../../shared-core/lines/index.ts';
-import { makeReference } from '../../shared-core/reference/index.ts';
+import { makeReference } from '../../shared-core/reference/make-reference.ts';
 import { prepareSpectrum, readSpectrumFile } from '../../shared-core/spectrum/index.ts';
 import type { SourceFile } from '../../shared-core/spectrum/types.ts';
 import { benchSettings, fileOf } from './judge.ts';

@@ -56,6 +56,8 @@ export function truthReference(spectrum: SimulatedSpectrum): FileReference {
     best: constantsOf(main),
     isotopologues: Object.fromEntries(bands.map((band) => [band.isotopologue, constantsOf(band)])),
     isotopologueReliability: Object.fromEntries(bands.map((band) => [band.isotopologue, 'sound'])),
+    isotopologueReasons: Object.fromEntries(bands.map((band) => [band.isotopologue, []])),
+    isotopologueChecks: Object.fromEntries(bands.map((band) => [band.isotopologue, []])),
     runnerUp: null,
     lines: bands.flatMap((band, index) => linesOf(band, spectrum.truth.options.seed + index)),
     model: 'simulated truth',
