@@ -20,7 +20,6 @@ export function refuse(code: string, reason: string, line: number | null = null)
 
 /** A piece of the file for a sentence: short, on one line, in quotation marks. */
 export function quoted(text: string): string {
-   
   const plain = text.replace(/[\u0000-\u001f\u007f-\u009f\ufffd]+/g, ' ').trim();
   return `“${plain.length > 40 ? `${plain.slice(0, 40)}…` : plain}”`;
 }

@@ -1,0 +1,142 @@
+/** Interference fringes on the baseline: relative = cosine cos(2 pi x / period) + sine sin(2 pi x / period). */
+export interface Fringes {
+  readonly periodPerCm: number;
+  readonly amplitude: number;
+  readonly cosine: number;
+  readonly sine: number;
+}
+
+/** In-place transform of a complex sequence whose length is a power of two. */
+function transform(re: Float64Array, im: Float64Array): void {
+  const n = re.length;
+  for (let i = 1, j = 0; i < n; i++) {
+    let bit = n >> 1;
+    for (; j & bit; bit >>= 1) j ^= bit;
+    j ^= bit;
+    if (i < j) {
+      [re[i], re[j]] = [re[j]!, re[i]!];
+      [im[i], im[j]] = [im[j]!, im[i]!];
+    }
+  }
+  for (let size = 2; size <= n; size <<= 1) {
+    const angle = (-2 * Math.PI) / size;
+    for (let k = 0; k < size / 2; k++) {
+      const c = Math.cos(angle * k);
+      const s = Math.sin(angle * k);
+      for (let from = k; from < n; from += size) {
+        const to = from + size / 2;
+        const a = re[to]! * c - im[to]! * s;
+        const b = re[to]! * s + im[to]! * c;
+        re[to] = re[from]! - a;
+        im[to] = im[from]! - b;
+        re[from] = re[from]! + a;
+        im[from] = im[from]! + b;
+      }
+    }
+  }
+}
+
+interface Wave {
+  readonly cosine: number;
+  readonly sine: number;
+  /** Share of the weighted variance that the wave explains. */
+  readonly explained: number;
+}
+
+/** Weighted least squares of cosine, sine and a constant at one frequency (per point). */
+function fitWave(values: Float64Array, weights: Float64Array, frequency: number): Wave {
+  let [w, c, s, cc, ss, cs, y, yc, ys, yy] = [0, 0, 0, 0, 0, 0, 0, 0, 0, 0];
+  for (let i = 0; i < values.length; i++) {
+    const weight = weights[i]!;
+    if (weight === 0) continue;
+    const angle = 2 * Math.PI * frequency * i;
+    const cos = Math.cos(angle);
+    const sin = Math.sin(angle);
+    const value = values[i]!;
+    w += weight;
+    c += weight * cos;
+    s += weight * sin;
+    cc += weight * cos * cos;
+    ss += weight * sin * sin;
+    cs += weight * cos * sin;
+    y += weight * value;
+    yc += weight * value * cos;
+    ys += weight * value * sin;
+    yy += weight * value * value;
+  }
+  // The constant is eliminated first.
+  const a = cc - (c * c) / w;
+  const b = ss - (s * s) / w;
+  const d = cs - (c * s) / w;
+  const p = yc - (y * c) / w;
+  const q = ys - (y * s) / w;
+  const determinant = a * b - d * d;
+  if (!(determinant > 1e-9 * w * w)) return { cosine: 0, sine: 0, explained: 0 };
+  const cosine = (p * b - q * d) / determinant;
+  const sine = (q * a - p * d) / determinant;
+  const total = yy - (y * y) / w;
+  return { cosine, sine, explained: total > 0 ? (cosine * p + sine * q) / total : 0 };
+}
+
+/** The strongest frequency between the limits (per point), by transform and a finer search around it. */
+function strongestFrequency(
+  values: Float64Array,
+  weights: Float64Array,
+  least: number,
+  greatest: number,
+): number {
+  const n = 2 ** Math.ceil(Math.log2(2 * values.length));
+  const re = new Float64Array(n);
+  const im = new Float64Array(n);
+  for (let i = 0; i < values.length; i++) if (weights[i]! > 0) re[i] = values[i]!;
+  transform(re, im);
+  let best = 0;
+  let power = 0;
+  for (let k = Math.max(1, Math.ceil(least * n)); k <= Math.min(n / 2, greatest * n); k++) {
+    const here = re[k]! ** 2 + im[k]! ** 2;
+    if (here > power) {
+      power = here;
+      best = k;
+    }
+  }
+  let frequency = best / n;
+  for (let width = 0.5 / n; width > 0.02 / n; width /= 2) {
+    const [below, above] = [frequency - width, frequency + width];
+    const here = fitWave(values, weights, frequency).explained;
+    const left = fitWave(values, weights, below).explained;
+    const right = fitWave(values, weights, above).explained;
+    if (left > here && left >= right) frequency = below;
+    else if (right > here) frequency = above;
+  }
+  return frequency;
+}
+
+/**
+ * Fringes in the line-free means of a flat residual, null where no single wave explains at least half of what the
+ * points show (`values` and `weights` per bin; weight 0: no free point).
+ */
+export function findFringes(
+  values: Float64Array,
+  weights: Float64Array,
+  binWidthPerCm: number,
+  noisePerPoint: number,
+): (Fringes & { readonly atBin: (place: number) => number }) | null {
+  const used = weights.reduce((count, weight) => count + (weight > 0 ? 1 : 0), 0);
+  if (used < 60) return null;
+  const rangePoints = values.length;
+  const frequency = strongestFrequency(values, weights, 2.5 / rangePoints, 0.25);
+  const wave = fitWave(values, weights, frequency);
+  const amplitude = Math.hypot(wave.cosine, wave.sine);
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  if (wave.explained < 0.5 || amplitude < 8 * noisePerPoint * Math.sqrt(2 / total)) return null;
+  return {
+    periodPerCm: binWidthPerCm / frequency,
+    amplitude,
+    cosine: wave.cosine,
+    sine: wave.sine,
+    atBin: (place) => {
+      const angle = 2 * Math.PI * frequency * place;
+      return wave.cosine * Math.cos(angle) + wave.sine * Math.sin(angle);
+    },
+  };
+}
