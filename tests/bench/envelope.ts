@@ -1,6 +1,6 @@
 import type { GasOptions } from '../../electron/backend/example/bands.ts';
 import { fileStyles, type FileStyle } from '../../electron/backend/example/file-writer.ts';
-import type { Apodisation } from '../../electron/backend/example/instrument.ts';
+import { apodisations } from '../../electron/backend/example/instrument.ts';
 import { createRandom, type Random } from '../../electron/backend/example/random.ts';
 import type { SimulationOptions } from '../../electron/backend/example/simulate.ts';
 
@@ -28,14 +28,6 @@ function monochromatic(apparent: number, resolutionPerCm: number, halfWidthPerCm
 }
 
 function instrument(random: Random): Partial<SimulationOptions> & { resolutionPerCm: number } {
-  const apodisations: readonly Apodisation[] = [
-    'boxcar',
-    'triangular',
-    'raised-cosine',
-    'raised-cosine-on-pedestal',
-    'three-term-cosine',
-    'squared-parabola',
-  ];
   const resolutionPerCm = random.pick([0.25, 0.5, 0.5, 1, 1, 2, 4]);
   const zeroFilling = random.pick([1, 2, 2, 4]);
   return {
