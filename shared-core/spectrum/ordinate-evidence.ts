@@ -1,3 +1,5 @@
+import { selectRank } from './select-rank.ts';
+
 /** What the numbers of an ordinate show without any label. */
 export interface OrdinateEvidence {
   /** Values below which 2 %, 8 %, 50 %, 92 %, 98 % of the points lie. */
@@ -24,12 +26,25 @@ function sampled(y: Float64Array, most: number): Float64Array {
 function excursions(y: Float64Array, block: number): { up: number; down: number } {
   let up = 0;
   let down = 0;
+  const scratch = new Float64Array(block);
   for (let from = 0; from + block <= y.length; from += block) {
-    const sorted = y.slice(from, from + block).sort();
-    const middle = sorted[block >> 1]!;
     // The second value from each end: a single spike decides nothing.
-    up += (sorted[block - 2]! - middle) ** 2;
-    down += (middle - sorted[1]!) ** 2;
+    let [greatest, second, least, nextLeast] = [-Infinity, -Infinity, Infinity, Infinity];
+    for (let i = 0; i < block; i++) {
+      const value = y[from + i]!;
+      scratch[i] = value;
+      if (value > greatest) {
+        second = greatest;
+        greatest = value;
+      } else if (value > second) second = value;
+      if (value < least) {
+        nextLeast = least;
+        least = value;
+      } else if (value < nextLeast) nextLeast = value;
+    }
+    const middle = selectRank(scratch, block, block >> 1);
+    up += (second - middle) ** 2;
+    down += (middle - nextLeast) ** 2;
   }
   return { up: Math.sqrt(up), down: Math.sqrt(down) };
 }
@@ -38,8 +53,7 @@ function directionOf(y: Float64Array): OrdinateEvidence['direction'] {
   let best = 0;
   for (const block of [32, 128, 512]) {
     if (y.length < 2 * block) continue;
-    const stretch = y.length > 60_000 ? y.subarray(0, y.length) : y;
-    const { up, down } = excursions(stretch, block);
+    const { up, down } = excursions(y, block);
     if (up + down === 0) continue;
     const tilt = (up - down) / (up + down);
     if (Math.abs(tilt) > Math.abs(best)) best = tilt;

@@ -38,13 +38,3 @@ export function binMeans(
   for (let b = 0; b < bins.count; b++) if (counts[b]! > 0) means[b] = means[b]! / counts[b]!;
   return { means, counts };
 }
-
-/** Values at bin centres, interpolated linearly to the points (the ends continue the last slope). */
-export function atPoints(bins: Bins, values: Float64Array, x: Float64Array): Float64Array {
-  const last = bins.count - 2;
-  return Float64Array.from(x, (wavenumber) => {
-    const place = (wavenumber - bins.from) / bins.widthPerCm - 0.5;
-    const left = Math.max(0, Math.min(last, Math.floor(place)));
-    return values[left]! + (place - left) * (values[left + 1]! - values[left]!);
-  });
-}

@@ -1,3 +1,5 @@
+import { selectRank } from '../select-rank.ts';
+
 /** A dip of the transmittance: index of its bottom, depth and full width at half depth. */
 export interface Dip {
   readonly index: number;
@@ -34,11 +36,17 @@ export function findDips(x: Float64Array, t: Float64Array, noise: Float64Array, 
   return dips;
 }
 
-/** Smallest width that several dips show: the tenth percentile of those that are neither faint nor black. */
+/**
+ * Smallest width that several dips show: the fifth part from below of those that are not black and stand well above
+ * the side lobes of the deep ones.
+ */
 export function resolutionOf(dips: readonly Dip[]): number | null {
-  const clear = dips.filter((dip) => dip.depth < 0.8);
-  const widths = (clear.length >= 3 ? clear : dips).map((dip) => dip.widthPerCm).sort((a, b) => a - b);
-  return widths.length < 3 ? null : widths[Math.floor(0.1 * (widths.length - 1))]!;
+  const depths = dips.map((dip) => dip.depth).sort((a, b) => b - a);
+  const deep = depths[Math.floor(0.1 * depths.length)] ?? 0;
+  const lines = dips.filter((dip) => dip.depth > 0.35 * deep);
+  const clear = lines.filter((dip) => dip.depth < 0.8);
+  const widths = (clear.length >= 3 ? clear : lines).map((dip) => dip.widthPerCm).sort((a, b) => a - b);
+  return widths.length < 3 ? null : widths[Math.floor(0.2 * (widths.length - 1))]!;
 }
 
 /**
@@ -50,8 +58,7 @@ export function saturationLevel(
   noise: Float64Array,
   correlationPoints: number,
 ): number | null {
-  const sorted = t.slice().sort();
-  const floor = sorted[Math.min(sorted.length - 1, 3)]!;
+  const floor = selectRank(t.slice(), t.length, Math.min(t.length - 1, 3));
   if (floor > 0.35) return null;
   const runLength = Math.max(4, Math.ceil(2 * correlationPoints));
   let places = 0;

@@ -111,6 +111,24 @@ function strongestFrequency(
   return frequency;
 }
 
+/** Whether both halves of the range show the wave with about the same height and phase: leftovers of lines do not. */
+function holdsInBothHalves(values: Float64Array, weights: Float64Array, frequency: number): boolean {
+  const middle = values.length >> 1;
+  const lower = fitWave(
+    values,
+    weights.map((weight, i) => (i < middle ? weight : 0)),
+    frequency,
+  );
+  const upper = fitWave(
+    values,
+    weights.map((weight, i) => (i < middle ? 0 : weight)),
+    frequency,
+  );
+  const product = lower.cosine * upper.cosine + lower.sine * upper.sine;
+  const heights = [Math.hypot(lower.cosine, lower.sine), Math.hypot(upper.cosine, upper.sine)] as const;
+  return Math.min(...heights) > 0.4 * Math.max(...heights) && product > 0.6 * heights[0] * heights[1];
+}
+
 /**
  * Fringes in the line-free means of a flat residual, null where no single wave explains at least half of what the
  * points show (`values` and `weights` per bin; weight 0: no free point).
@@ -122,13 +140,15 @@ export function findFringes(
   noisePerPoint: number,
 ): (Fringes & { readonly atBin: (place: number) => number }) | null {
   const used = weights.reduce((count, weight) => count + (weight > 0 ? 1 : 0), 0);
-  if (used < 60) return null;
   const rangePoints = values.length;
-  const frequency = strongestFrequency(values, weights, 2.5 / rangePoints, 0.25);
+  // With few free points a comb of lines leaves wings that pass for a wave.
+  if (used < Math.max(60, 0.3 * rangePoints)) return null;
+  const frequency = strongestFrequency(values, weights, 3.5 / rangePoints, 0.25);
   const wave = fitWave(values, weights, frequency);
   const amplitude = Math.hypot(wave.cosine, wave.sine);
   const total = weights.reduce((sum, weight) => sum + weight, 0);
   if (wave.explained < 0.5 || amplitude < 8 * noisePerPoint * Math.sqrt(2 / total)) return null;
+  if (!holdsInBothHalves(values, weights, frequency)) return null;
   return {
     periodPerCm: binWidthPerCm / frequency,
     amplitude,

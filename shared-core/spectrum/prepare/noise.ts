@@ -1,3 +1,5 @@
+import { selectRank } from '../select-rank.ts';
+
 /** Noise of a flat residual: per point, and how far it is correlated. */
 export interface NoiseEstimate {
   /** 1 sigma at each point. */
@@ -11,21 +13,20 @@ export interface NoiseEstimate {
 const lags = [1, 2, 3, 4, 6, 8, 12, 16, 24, 32];
 
 /** Standard deviation of mostly normal values: median of sizes first, then the mean square within 3.5 of that. */
-function robustDeviation(values: Float64Array, count: number): number {
+function robustDeviation(sizes: Float64Array, count: number): number {
   if (count === 0) return 0;
-  const sizes = values.slice(0, count);
   for (let i = 0; i < count; i++) sizes[i] = Math.abs(sizes[i]!);
-  sizes.sort();
-  const scale = 1.4826 * sizes[count >> 1]!;
-  const limit = scale > 0 ? 3.5 * scale : sizes[Math.floor(0.9 * (count - 1))]!;
+  const scale = 1.4826 * selectRank(sizes, count, count >> 1);
+  const limit = scale > 0 ? 3.5 * scale : selectRank(sizes, count, Math.floor(0.9 * (count - 1)));
   let sum = 0;
   let within = 0;
-  for (let i = 0; i < count && sizes[i]! <= limit; i++) {
+  for (let i = 0; i < count; i++) {
+    if (sizes[i]! > limit) continue;
     sum += sizes[i]! ** 2;
     within++;
   }
-  // A normal distribution cut at 3.5 sigma keeps 0.9953 of its variance (0.9957 of its width is common practice).
-  return within === 0 ? scale : Math.sqrt(sum / within / 0.9953);
+  // A normal distribution cut at 3.5 sigma keeps 0.9939 of its variance.
+  return within === 0 ? scale : Math.sqrt(sum / within / 0.9939);
 }
 
 /** Second differences at one lag over free points, scaled to the deviation of one independent point. */
@@ -136,12 +137,10 @@ export function estimateNoise(residual: Float64Array, free: Uint8Array, least: n
   return { noise, overall, correlationPoints: correlationOf(residual, free, measured) };
 }
 
-/** A quick figure for one array: deviation from second differences of neighbours, all points. */
-export function quickNoise(values: Float64Array): number {
-  const scratch = new Float64Array(Math.min(values.length, 8000));
-  const all = new Uint8Array(values.length).fill(1);
-  return Math.max(
-    lagDeviation(values, all, 1, 0, values.length, scratch).deviation,
-    lagDeviation(values, all, 4, 0, values.length, scratch).deviation * 0.25,
-  );
+/** A quick overall figure of the same kind: all points where `free` is null (lines then widen it a little). */
+export function scatterOf(residual: Float64Array, free: Uint8Array | null): number {
+  const scratch = new Float64Array(Math.min(residual.length, 4000));
+  const points = free ?? new Uint8Array(residual.length).fill(1);
+  const lag = decorrelationLag(residual, points, scratch);
+  return lagDeviation(residual, points, lag, 0, residual.length, scratch).deviation;
 }
