@@ -1,3 +1,4 @@
+import { upperCurve } from './prepare/upper-curve.ts';
 import { selectRank } from './select-rank.ts';
 
 /** What the numbers of an ordinate show without any label. */
@@ -49,7 +50,8 @@ function excursions(y: Float64Array, block: number): { up: number; down: number 
   return { up: Math.sqrt(up), down: Math.sqrt(down) };
 }
 
-function directionOf(y: Float64Array): OrdinateEvidence['direction'] {
+/** Tilt of the excursions towards up (+) or down (-), the clearest of three block lengths. */
+function tiltOf(y: Float64Array): number {
   let best = 0;
   for (const block of [32, 128, 512]) {
     if (y.length < 2 * block) continue;
@@ -58,8 +60,29 @@ function directionOf(y: Float64Array): OrdinateEvidence['direction'] {
     const tilt = (up - down) / (up + down);
     if (Math.abs(tilt) > Math.abs(best)) best = tilt;
   }
-  if (Math.abs(best) < 0.15) return 'none';
-  return best > 0 ? 'up' : 'down';
+  return best;
+}
+
+/**
+ * The same for few points, where a dense band fills whole blocks: a smooth curve fits the side without lines to within
+ * the noise, and the side with lines badly.
+ */
+function tiltOfEnvelopes(y: Float64Array): number {
+  const ones = new Float64Array(y.length).fill(1);
+  const top = upperCurve(y, ones, 3, 0.03).scatter;
+  const bottom = upperCurve(
+    y.map((value) => -value),
+    ones,
+    3,
+    0.03,
+  ).scatter;
+  return top + bottom === 0 ? 0 : (top - bottom) / (top + bottom);
+}
+
+function directionOf(y: Float64Array): OrdinateEvidence['direction'] {
+  const tilt = y.length < 1500 ? tiltOfEnvelopes(y) : tiltOf(y);
+  if (Math.abs(tilt) < 0.15) return 'none';
+  return tilt > 0 ? 'up' : 'down';
 }
 
 /** A burst that swings to both sides of the mean several times, with quiet on both sides of it. */

@@ -1,7 +1,9 @@
 import { binMeans, binsFor, type Bins } from './bins.ts';
 import { findFringes, type Fringes } from './fringes.ts';
 import { scatterOf } from './noise.ts';
+import { selectRank } from '../select-rank.ts';
 import { fitSmoothSpline, splineAt, type SmoothSpline } from './smooth-spline.ts';
+import { stiffCurve } from './upper-curve.ts';
 
 export interface Baseline {
   /** In transmittance, above zero. */
@@ -15,48 +17,15 @@ export interface Baseline {
 const stiffKnotsPerCm = 120;
 const finalKnotsPerCm = 60;
 
-/**
- * Asymmetrically reweighted least squares (S.-J. Baek et al., Analyst 140 (2015) 250), turned so that lines point down:
- * points far below the curve lose their weight, by the scatter of the points above it.
- */
-function upperCurve(
-  means: Float64Array,
-  counts: Float64Array,
-  intervals: number,
-): { curve: SmoothSpline; scatter: number } {
-  const n = means.length;
-  const weights = counts.map((count) => Math.min(1, count));
-  let curve = fitSmoothSpline(means, weights, intervals, 0.03);
-  let scatter = 0;
-  const depth = new Float64Array(n);
-  for (let round = 0; round < 30; round++) {
-    let sum = 0;
-    let squares = 0;
-    let above = 0;
-    for (let i = 0; i < n; i++) {
-      depth[i] = splineAt(curve, (i + 0.5) / n) - means[i]!;
-      if (counts[i]! > 0 && depth[i]! < 0) {
-        sum += depth[i]!;
-        squares += depth[i]! ** 2;
-        above++;
-      }
-    }
-    if (above < 3) break;
-    const mean = sum / above;
-    scatter = Math.sqrt(Math.max(0, squares / above - mean * mean));
-    if (scatter === 0) break;
-    let change = 0;
-    for (let i = 0; i < n; i++) {
-      if (counts[i] === 0) continue;
-      const exponent = Math.min(50, (2 * (depth[i]! - (2 * scatter - mean))) / scatter);
-      const weight = Math.max(1e-5, 1 / (1 + Math.exp(exponent)));
-      change += Math.abs(weight - weights[i]!);
-      weights[i] = weight;
-    }
-    if (change < 0.005 * n) break;
-    curve = fitSmoothSpline(means, weights, intervals, 0.03);
+/** Root mean square of what lies above the curve, over all points or the free ones: lines do not enter it. */
+function upperScatter(depth: Float64Array, free: Uint8Array | null): number {
+  let [sum, count] = [0, 0];
+  for (let i = 0; i < depth.length; i++) {
+    if (depth[i]! >= 0 || (free && free[i] === 0)) continue;
+    sum += depth[i]! ** 2;
+    count++;
   }
-  return { curve, scatter };
+  return count === 0 ? 0 : Math.sqrt(sum / count);
 }
 
 /** Marks points that lie within the tolerance of the curve, and unmarks the neighbours of those that do not. */
@@ -99,56 +68,103 @@ function sampledQuantile(values: Float64Array, share: number): number {
   return sorted[Math.floor(share * (sorted.length - 1))]!;
 }
 
+/** Points less than 2.5 times the median depth below the curve: all of a wave whose crests the curve rides on. */
+function generousFree(depth: Float64Array): Uint8Array {
+  const sizes = depth.map(Math.abs);
+  const limit = 2.5 * selectRank(sizes, sizes.length, sizes.length >> 1);
+  return Uint8Array.from(depth, (each) => (Math.abs(each) < limit ? 1 : 0));
+}
+
+/** Carbon dioxide of the air stands there in either direction and must not bend the curve, where more is left. */
+function withoutCarbonDioxide(bins: Bins, counts: Float64Array): Float64Array {
+  const isThere = (b: number): boolean => Math.abs(bins.from + (b + 0.5) * bins.widthPerCm - 2340) < 50;
+  const left = counts.map((count, b) => (isThere(b) ? 0 : count));
+  return left.filter((count) => count > 0).length > 0.7 * bins.count ? left : counts;
+}
+
+type Wave = ReturnType<typeof findFringes>;
+
+/** State of the search: the curve without the wave, and the depth of every point below both. */
+class Search {
+  readonly depth: Float64Array;
+  private readonly x: Float64Array;
+  private readonly t: Float64Array;
+  private readonly bins: Bins;
+  private readonly least: number;
+  values: Float64Array;
+  private curve: SmoothSpline;
+  wave: Wave = null;
+
+  constructor(x: Float64Array, t: Float64Array, bins: Bins, curve: SmoothSpline, least: number) {
+    this.x = x;
+    this.t = t;
+    this.bins = bins;
+    this.curve = curve;
+    this.least = least;
+    this.depth = new Float64Array(x.length);
+    this.values = this.withoutWave();
+    this.measure();
+  }
+
+  private withoutWave(): Float64Array {
+    const span = this.bins.count * this.bins.widthPerCm;
+    return this.x.map((w) => Math.max(this.least, splineAt(this.curve, (w - this.bins.from) / span)));
+  }
+
+  private measure(): void {
+    for (let i = 0; i < this.depth.length; i++) this.depth[i] = 1 - this.t[i]! / this.values[i]!;
+  }
+
+  /** Looks for one wave in the free points, on the bare curve. */
+  findWave(free: Uint8Array): Wave {
+    const bare = this.wave ? this.withoutWave() : this.values;
+    const relative = this.t.map((value, i) => value / bare[i]! - 1);
+    const flat = binMeans(this.bins, relative, free);
+    return findFringes(flat.means, flat.counts, this.bins.widthPerCm, scatterOf(this.depth, free));
+  }
+
+  /** Puts the curve through the free points after dividing the wave out. */
+  refine(free: Uint8Array): void {
+    const { wave, bins } = this;
+    const factor = wave ? this.x.map((w) => 1 + wave.atBin((w - bins.from) / bins.widthPerCm - 0.5)) : null;
+    this.curve = throughFree(
+      bins,
+      factor ? this.t.map((value, i) => value / factor[i]!) : this.t,
+      free,
+      this.curve,
+    );
+    this.values = this.withoutWave();
+    if (factor) this.values = this.values.map((value, i) => value * factor[i]!);
+    this.measure();
+  }
+}
+
 /**
  * The baseline of a transmittance whose lines point down: a stiff curve through the upper side, one wave of fringes,
  * and a gentle refinement through the points that show no line.
  */
 export function estimateBaseline(x: Float64Array, t: Float64Array, stepPerCm: number): Baseline {
-  const n = x.length;
   const bins = binsFor(x, stepPerCm);
   const { means, counts } = binMeans(bins, t, null);
-  const stiff = upperCurve(means, counts, intervalsFor(bins, stiffKnotsPerCm));
+  const stiff = stiffCurve(means, withoutCarbonDioxide(bins, counts), intervalsFor(bins, stiffKnotsPerCm));
   const least = Math.max(1e-9, 1e-3 * sampledQuantile(means, 0.9));
+  const search = new Search(x, t, bins, stiff.curve, least);
   const reach = Math.max(2, Math.round(0.5 / stepPerCm));
-  const span = bins.count * bins.widthPerCm;
-  const valuesOf = (spline: SmoothSpline): Float64Array => {
-    const values = new Float64Array(n);
-    for (let i = 0; i < n; i++) values[i] = Math.max(least, splineAt(spline, (x[i]! - bins.from) / span));
-    return values;
-  };
-  let curve = stiff.curve;
-  let values = valuesOf(curve);
-  const depth = new Float64Array(n);
-  const measureDepth = (): void => {
-    for (let i = 0; i < n; i++) depth[i] = 1 - t[i]! / values[i]!;
-  };
-  measureDepth();
-  const scale = sampledQuantile(means, 0.9);
-  const scatter = (2.5 * stiff.scatter) / Math.max(scale, 1e-9);
-  let free = freePoints(depth, Math.max(scatter, 3 * scatterOf(depth, null)), reach);
-  let fringes: ReturnType<typeof findFringes> = null;
+  // Lines point down, so what lies above the curve measures noise, fringes and misfit without them.
+  const first = 2.5 * upperScatter(search.depth, null);
+  let free = freePoints(search.depth, first, reach);
+  const generous = generousFree(search.depth);
+  search.wave = search.findWave(generous);
+  if (search.wave) free = generous;
   for (let round = 0; round < 3 && shareOf(free) >= 0.03; round++) {
-    const sigma = scatterOf(depth, free);
-    if (round < 2) {
-      // The wave found before is in `values`; here it is looked for afresh on the bare curve.
-      const bare = fringes ? valuesOf(curve) : values;
-      const relative = new Float64Array(n);
-      for (let i = 0; i < n; i++) relative[i] = t[i]! / bare[i]! - 1;
-      const flat = binMeans(bins, relative, free);
-      fringes = findFringes(flat.means, flat.counts, bins.widthPerCm, sigma);
-    }
-    const wave = fringes;
-    const factor = wave ? x.map((w) => 1 + wave.atBin((w - bins.from) / bins.widthPerCm - 0.5)) : null;
-    curve = throughFree(bins, factor ? t.map((value, i) => value / factor[i]!) : t, free, curve);
-    values = valuesOf(curve);
-    if (factor) for (let i = 0; i < n; i++) values[i] = values[i]! * factor[i]!;
-    measureDepth();
-    const tolerance = 3 * scatterOf(depth, free);
+    if (round < 2 && !(round === 0 && search.wave)) search.wave = search.findWave(free);
+    search.refine(free);
+    const tolerance = 3 * Math.min(scatterOf(search.depth, free), upperScatter(search.depth, free));
     free = freePoints(
-      depth,
-      round === 0 ? Math.max(tolerance, 0.6 * scatter) : Math.max(tolerance, 1e-6),
+      search.depth,
+      Math.max(tolerance, round === 0 && !search.wave ? 0.6 * first : 1e-6),
       reach,
     );
   }
-  return { values, free, fringes };
+  return { values: search.values, free, fringes: search.wave };
 }

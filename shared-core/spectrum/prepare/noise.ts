@@ -92,29 +92,91 @@ function correlationOf(residual: Float64Array, free: Uint8Array, overall: number
   return ratio < 1.3 ? 1 : Math.min(32, ratio);
 }
 
-/** Local deviations, drawn towards the overall one where few points stand behind them, interpolated over the range. */
-function localNoise(
+interface Segment {
+  readonly from: number;
+  readonly to: number;
+  /** Share of free points. */
+  readonly freeShare: number;
+}
+
+function segmentsOf(free: Uint8Array): Segment[] {
+  const n = free.length;
+  const count = Math.max(1, Math.min(24, Math.floor(n / 80)));
+  return Array.from({ length: count }, (_, k) => {
+    const from = Math.floor((k * n) / count);
+    const to = Math.floor(((k + 1) * n) / count);
+    let points = 0;
+    for (let i = from; i < to; i++) points += free[i]!;
+    return { from, to, freeShare: points / (to - from) };
+  });
+}
+
+/** Free points of the quietest third of the segments: where the remains of lines and side lobes are least. */
+function quietPoints(
+  residual: Float64Array,
+  free: Uint8Array,
+  segments: readonly Segment[],
+  scratch: Float64Array,
+): { points: Uint8Array; segments: ReadonlySet<Segment> } {
+  const judged = segments
+    .map((segment) => ({ segment, ...lagDeviation(residual, free, 4, segment.from, segment.to, scratch) }))
+    .filter((each) => each.count >= 20)
+    .sort((a, b) => a.deviation - b.deviation);
+  const quiet = new Set(
+    judged.slice(0, Math.max(3, Math.ceil(judged.length / 3))).map((each) => each.segment),
+  );
+  const points = new Uint8Array(free.length);
+  for (const { from, to } of quiet) points.set(free.subarray(from, to), from);
+  return { points, segments: quiet };
+}
+
+/** Whether many points of a segment stand clearly above the baseline: side lobes of an instrument without apodisation. */
+function isRinging(residual: Float64Array, segment: Segment, sigma: number): boolean {
+  let high = 0;
+  for (let i = segment.from; i < segment.to; i++) if (residual[i]! > 6 * sigma) high++;
+  return high > 0.01 * (segment.to - segment.from);
+}
+
+/**
+ * One deviation per segment (natural logarithm): its own where most of it is free and no line remains show; else what
+ * the trusted ones around it say, or its own if that is less.
+ */
+function segmentLogs(
   residual: Float64Array,
   free: Uint8Array,
   lag: number,
-  overall: number,
+  quiet: { readonly deviation: number; readonly segments: ReadonlySet<Segment> },
+  segments: readonly Segment[],
   scratch: Float64Array,
-): Float64Array {
-  const n = residual.length;
-  const segments = Math.max(1, Math.min(24, Math.floor(n / 250)));
-  const logs = Array.from({ length: segments }, (_, k) => {
-    const from = Math.floor((k * n) / segments);
-    const to = Math.floor(((k + 1) * n) / segments);
-    const { deviation, count } = lagDeviation(residual, free, lag, from, to, scratch);
-    const prior = 60 * lag;
-    const variance = (count * deviation ** 2 + prior * overall ** 2) / (count + prior);
-    return 0.5 * Math.log(Math.max(variance, 1e-4 * overall ** 2));
+): number[] {
+  const own = segments.map((segment) => {
+    const { deviation, count } = lagDeviation(residual, free, lag, segment.from, segment.to, scratch);
+    const prior = 30 * Math.sqrt(lag);
+    const variance = (count * deviation ** 2 + prior * quiet.deviation ** 2) / (count + prior);
+    return 0.5 * Math.log(Math.max(variance, 1e-4 * quiet.deviation ** 2));
   });
+  const trusted = segments.map(
+    (segment) =>
+      quiet.segments.has(segment) ||
+      (segment.freeShare >= 0.6 && !isRinging(residual, segment, quiet.deviation)),
+  );
+  return own.map((value, k) => {
+    if (trusted[k]) return value;
+    const below = trusted.lastIndexOf(true, k);
+    const above = trusted.indexOf(true, k);
+    const left = below < 0 ? own[above]! : own[below]!;
+    const right = above < 0 ? left : own[above]!;
+    const between = below < 0 || above < 0 ? left : left + ((right - left) * (k - below)) / (above - below);
+    return Math.min(value, between);
+  });
+}
+
+function interpolated(logs: readonly number[], n: number): Float64Array {
   const noise = new Float64Array(n);
   for (let i = 0; i < n; i++) {
-    const place = Math.max(0, Math.min(segments - 1, ((i + 0.5) * segments) / n - 0.5));
-    const left = Math.min(segments - 1, Math.floor(place));
-    const right = Math.min(segments - 1, left + 1);
+    const place = Math.max(0, Math.min(logs.length - 1, ((i + 0.5) * logs.length) / n - 0.5));
+    const left = Math.floor(place);
+    const right = Math.min(logs.length - 1, left + 1);
     noise[i] = Math.exp(logs[left]! + (place - left) * (logs[right]! - logs[left]!));
   }
   return noise;
@@ -126,15 +188,27 @@ function localNoise(
  */
 export function estimateNoise(residual: Float64Array, free: Uint8Array, least: number): NoiseEstimate {
   const scratch = new Float64Array(Math.min(residual.length, 20_000));
-  const lag = decorrelationLag(residual, free, scratch);
-  const measured = lagDeviation(residual, free, lag, 0, residual.length, scratch).deviation;
-  const overall = Math.max(measured, least);
-  if (measured <= least) {
-    return { noise: new Float64Array(residual.length).fill(overall), overall, correlationPoints: 1 };
+  const segments = segmentsOf(free);
+  const found = quietPoints(residual, free, segments, scratch);
+  // Where lines are so dense that no stretch is free, the free points of the whole range have to do.
+  const quiet = found.segments.size > 0 ? found : { points: free, segments: new Set(segments) };
+  const lag = decorrelationLag(residual, quiet.points, scratch);
+  const calm = lagDeviation(residual, quiet.points, lag, 0, residual.length, scratch).deviation;
+  if (calm <= least) {
+    return { noise: new Float64Array(residual.length).fill(least), overall: least, correlationPoints: 1 };
   }
-  const noise = localNoise(residual, free, lag, overall, scratch);
+  const logs = segmentLogs(
+    residual,
+    free,
+    lag,
+    { deviation: calm, segments: quiet.segments },
+    segments,
+    scratch,
+  );
+  const noise = interpolated(logs, residual.length);
   for (let i = 0; i < noise.length; i++) noise[i] = Math.max(noise[i]!, least);
-  return { noise, overall, correlationPoints: correlationOf(residual, free, measured) };
+  const overall = Math.exp(logs.reduce((sum, value) => sum + value, 0) / logs.length);
+  return { noise, overall, correlationPoints: correlationOf(residual, quiet.points, calm) };
 }
 
 /** A quick overall figure of the same kind: all points where `free` is null (lines then widen it a little). */
