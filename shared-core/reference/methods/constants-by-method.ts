@@ -3,7 +3,7 @@ import type { Measured, QuantityKey, StandardUnit } from '../../units/types.ts';
 import { propagate } from '../propagate.ts';
 import type { Constants, MethodSettings, PrescribedMethod } from '../types.ts';
 import { derive, readOf, type DeriveContext, type Values } from './derive.ts';
-import { reducedMassOf } from './masses.ts';
+import { reducedMassU as reducedMassOf } from '../../molecule/isotopologue.ts';
 import type { MethodLine, Primitives, PrimitiveKey } from './method-line.ts';
 import { linesOfMethod, primitivesByMethod } from './primitives.ts';
 

@@ -1,7 +1,8 @@
 import type { QuantityKey } from '../../units/types.ts';
 import type { MethodSettings } from '../types.ts';
 import type { Primitives, PrimitiveKey } from './method-line.ts';
-import { bondLengthPm, forceConstantNPerM, inertiaFactorKgM2PerCm } from './physical-factors.ts';
+import { momentOfInertiaFactor } from '../../molecule/physical-constants.ts';
+import { bondLengthPm, forceConstantNPerM } from './physical-factors.ts';
 
 /** Plain numbers in standard units; what a method does not yield is absent. */
 export type Values = Partial<Record<QuantityKey, number>>;
@@ -46,7 +47,7 @@ export const standardSteps: Readonly<Record<QuantityKey, Step>> = {
   // I = h/(8π²cB)
   I: (have, c) => {
     const b = have[c.settings.bondLengthFrom];
-    return b === undefined ? null : inertiaFactorKgM2PerCm / b;
+    return b === undefined ? null : momentOfInertiaFactor / b;
   },
   r0: ({ B0, mu }) => (B0 === undefined || mu === undefined ? null : bondLengthPm(B0, mu)),
   re: (have, c) => {

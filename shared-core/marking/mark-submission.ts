@@ -1,0 +1,124 @@
+import type { PrescribedConstants } from '../reference/types.ts';
+import type { QuantityKey, Reason } from '../units/types.ts';
+import { askedOf, isotopologuesOf, valuesOf } from './asked.ts';
+import type { ChosenSet } from './compare.ts';
+import { markValues } from './mark-values.ts';
+import { observationsOf } from './observations.ts';
+import { answerKey, type AnswerKey, type NamedReference } from './prescribe.ts';
+import { findingsOf } from './slips/explain.ts';
+import { weighSubmission } from './slips/weigh-submission.ts';
+import type { Verdict } from './slips/weigh-slips.ts';
+import { ownLinesOf } from './student-lines.ts';
+import type { MarkedSubmission, MarkedValue, MarkingScheme, Submission } from './types.ts';
+
+export interface MarkOptions {
+  /** Step of each file's abscissa in cm-1, by file name: sets the reading error that is expected of a student. */
+  readonly stepPerCmOf?: (file: string) => number | null;
+}
+
+/**
+ * Marks one submission: values against the answer key of its own files, points, slips, observations.
+ *
+ * Pure and independent of the order of values, lines and files. Points are null where no sound reference exists.
+ *
+ * @param references the file references of the submission's spectra, each with its file name; empty where none was matched.
+ */
+export function markSubmission(
+  submission: Submission,
+  references: readonly NamedReference[],
+  scheme: MarkingScheme,
+  options: MarkOptions = {},
+): MarkedSubmission {
+  const main = references[0]?.reference ?? null;
+  const isotopologues = isotopologuesOf(submission, scheme, main);
+  const parts = isotopologues.map((isotopologue) =>
+    markIsotopologue(submission, isotopologue, isotopologues, references, scheme, options),
+  );
+  const values = parts.flatMap((p) => p.values);
+  const settled = values.filter((v) => v.points !== null);
+  const source = parts.find((p) => p.key.source !== null)?.key.source ?? references[0] ?? null;
+  return {
+    submission,
+    spectrum: source?.file ?? null,
+    reference: source?.reference ?? null,
+    prescribed: Object.fromEntries(parts.map((p) => [p.key.isotopologue, p.prescribed])),
+    values,
+    slips: parts.flatMap((p) => (p.verdict === null ? [] : findingsOf(p.verdict, p.key.isotopologue))),
+    observations: parts.flatMap((p) => observationsOf(p, submission, scheme)),
+    points: settled.length === 0 ? null : round(settled.reduce((sum, v) => sum + (v.points ?? 0), 0)),
+    of: round(values.reduce((sum, v) => sum + v.of, 0)),
+    open: values.length - settled.length,
+    remarks: remarksOf(submission, references),
+  };
+}
+
+/** Everything about one isotopologue of a submission. */
+export interface MarkedPart {
+  readonly key: AnswerKey;
+  readonly values: readonly MarkedValue[];
+  readonly chosen: readonly ChosenSet[];
+  readonly prescribed: readonly PrescribedConstants[];
+  readonly verdict: Verdict | null;
+}
+
+function markIsotopologue(
+  submission: Submission,
+  isotopologue: string,
+  isotopologues: readonly string[],
+  references: readonly NamedReference[],
+  scheme: MarkingScheme,
+  options: MarkOptions,
+): MarkedPart {
+  const key = answerKey(isotopologue, references, scheme, submission);
+  const submitted = valuesOf(submission, isotopologue, isotopologues);
+  const asked = askedOf(scheme, [isotopologue]);
+  const { values, chosen } = markValues(key, asked, submitted, scheme);
+  const best = bestOf(chosen);
+  const verdict =
+    best === null
+      ? null
+      : weighSubmission(key, submitted, references, scheme, {
+          method: best.result.method,
+          sets: best.result.span.sets.map((s) => s.set),
+          originByMidpoint: originByMidpoint(values, chosen, best),
+          stepPerCm: key.source === null ? null : (options.stepPerCmOf?.(key.source.file) ?? null),
+          ownLines: ownLinesOf(submission, isotopologue, isotopologues),
+        });
+  return { key, values, chosen, prescribed: key.methods.map((m) => m.span.constants), verdict };
+}
+
+/** The method that yields most of the values asked for, and under which they agree best. */
+function bestOf(chosen: readonly ChosenSet[]): ChosenSet | null {
+  const score = (c: ChosenSet): number =>
+    c.comparisons.size + [...c.comparisons.values()].filter((x) => x.agreement === 'within').length;
+  return chosen.reduce<ChosenSet | null>((a, b) => (a === null || score(b) > score(a) ? b : a), null);
+}
+
+function originByMidpoint(
+  values: readonly MarkedValue[],
+  chosen: readonly ChosenSet[],
+  best: ChosenSet,
+): boolean {
+  if (best.result.method.fit === 'midpoint') return false;
+  const midpoint = chosen.find((c) => c.result.method.fit === 'midpoint');
+  const off = (c: ChosenSet | undefined, key: QuantityKey): number =>
+    Math.abs(c?.comparisons.get(key)?.deviation ?? Infinity);
+  return (
+    midpoint !== undefined &&
+    values.some((v) => v.quantity === 'nu0') &&
+    off(midpoint, 'nu0') < off(best, 'nu0')
+  );
+}
+
+function remarksOf(submission: Submission, references: readonly NamedReference[]): Reason[] {
+  if (submission.spectra.length === 0)
+    return [{ code: 'no-spectrum', text: 'No spectrum was matched to this submission.' }];
+  const there = new Set(references.map((r) => r.file));
+  return submission.spectra
+    .filter((file) => !there.has(file))
+    .map((file) => ({ code: 'spectrum-missing', text: `No reference was made from ${file}.` }));
+}
+
+function round(points: number): number {
+  return Math.round(1e6 * points) / 1e6;
+}

@@ -1,0 +1,173 @@
+import type { Values } from '../../reference/methods/derive.ts';
+import type { QuantityKey } from '../../units/types.ts';
+import type { Field } from './fields.ts';
+import {
+  linearise,
+  logProbability,
+  standardDeviations,
+  type LinearPrediction,
+  type ReadingError,
+} from './likelihood.ts';
+import { predict, type SlippedSteps } from './predict.ts';
+import { logUnknownDensity, priors } from './priors.ts';
+import type { Reading } from './reading.ts';
+
+/** A named cause within a hypothesis. */
+export interface Cause {
+  readonly code: string;
+  readonly formula: string;
+  /** Quantities that it can move by itself; all where absent. */
+  readonly moves?: ReadonlySet<QuantityKey>;
+  /** The one quantity that it concerns, where it is a slip of the pen. */
+  readonly only?: QuantityKey;
+}
+
+/** One account of all submitted values. */
+export interface Hypothesis {
+  readonly causes: readonly Cause[];
+  readonly slipped: SlippedSteps;
+  readonly reading: Reading;
+  readonly errors: readonly ReadingError[];
+  readonly logPrior: number;
+  /** Fields that are unknown by hypothesis (and may be carried on from). */
+  readonly free: ReadonlySet<QuantityKey>;
+  /** Numbers taken as meant in place of those written, with their cause among `causes`. */
+  readonly meant: ReadonlyMap<QuantityKey, number>;
+}
+
+/** A hypothesis weighed. */
+export interface Weighed {
+  readonly hypothesis: Hypothesis;
+  readonly logWeight: number;
+  /** What it predicts for every quantity. */
+  readonly predicted: Values;
+  /** Fields that it leaves unexplained. */
+  readonly unexplained: readonly QuantityKey[];
+}
+
+/** The submission against which hypotheses are weighed. */
+export interface Bench {
+  readonly fields: readonly Field[];
+  /** Correct work: values, and the standard deviation of each field with a generous reading error. */
+  readonly correct: LinearPrediction;
+  readonly generous: readonly number[];
+  readonly correctReading: Reading;
+}
+
+/** Generous windows decide only what is looked at closely; the weighing itself uses the stated errors. */
+const windowSigmas = 7;
+const mostUnexplained = 2;
+
+export function benchOf(
+  fields: readonly Field[],
+  reading: Reading,
+  base: SlippedSteps,
+  errors: readonly ReadingError[],
+): Bench | null {
+  const predicted = predict(reading.context(reading.mean), base);
+  const known = fields.filter((f) => predicted[f.key] !== undefined);
+  const correct = linearise(reading, base, known);
+  if (correct === null || known.length === 0) return null;
+  const largest = Math.max(...errors.map((e) => e.perCm));
+  return {
+    fields: known,
+    correct,
+    generous: standardDeviations(known, correct, reading, largest),
+    correctReading: reading,
+  };
+}
+
+/** Fields whose number is plainly not what the values say. */
+export function misfits(
+  bench: Bench,
+  values: Values,
+  hypothesis: Pick<Hypothesis, 'free' | 'meant'>,
+): number[] {
+  const out: number[] = [];
+  for (let i = 0; i < bench.fields.length; i++) {
+    const f = bench.fields[i]!;
+    if (hypothesis.free.has(f.key)) continue;
+    const predicted = values[f.key];
+    if (predicted === undefined) continue;
+    const expected = bench.correct.values[f.key]!;
+    const scale = Math.max(1, Math.abs(predicted / expected));
+    const value = hypothesis.meant.get(f.key) ?? f.value;
+    if (Math.abs(value - predicted) > windowSigmas * bench.generous[i]! * scale) out.push(i);
+  }
+  return out;
+}
+
+/** Weighs a hypothesis; null where it leaves too much unexplained to be worth a closer look. */
+export function weigh(bench: Bench, hypothesis: Hypothesis, values?: Values): Weighed | null {
+  const predicted =
+    values ?? predict(hypothesis.reading.context(hypothesis.reading.mean), hypothesis.slipped);
+  const off = misfits(bench, predicted, hypothesis);
+  if (
+    off.length > mostUnexplained ||
+    (off.length > 0 && off.length + hypothesis.free.size >= bench.fields.length)
+  ) {
+    return null;
+  }
+  const first = weighWithout(bench, hypothesis, predicted, new Set(off));
+  if (off.length >= mostUnexplained || bench.fields.length - off.length < 3) return first;
+  // One field further may be better taken as unexplained: the one that stands farthest off is tried.
+  const candidates = bench.fields
+    .map((f, i) => ({
+      i,
+      off:
+        Math.abs((hypothesis.meant.get(f.key) ?? f.value) - (predicted[f.key] ?? f.value)) /
+        bench.generous[i]!,
+    }))
+    .filter(({ i, off: o }) => o > 0.3 && !off.includes(i) && !hypothesis.free.has(bench.fields[i]!.key))
+    .sort((a, b) => b.off - a.off)
+    .slice(0, 2);
+  let best = first;
+  for (const { i } of candidates) {
+    const other = weighWithout(bench, hypothesis, predicted, new Set([...off, i]));
+    if (other.logWeight > best.logWeight) best = other;
+  }
+  return best;
+}
+
+function weighWithout(
+  bench: Bench,
+  hypothesis: Hypothesis,
+  predicted: Values,
+  without: ReadonlySet<number>,
+): Weighed {
+  let logWeight = hypothesis.logPrior;
+  const active: Field[] = [];
+  bench.fields.forEach((f, i) => {
+    const expected = bench.correct.values[f.key]!;
+    if (hypothesis.free.has(f.key) || without.has(i)) {
+      logWeight += logUnknown(f, expected) + (without.has(i) ? Math.log(priors.unknownValue) : 0);
+    } else if (predicted[f.key] === undefined) {
+      logWeight += logMarginal(f, expected, bench.generous[i]!);
+    } else {
+      const meant = hypothesis.meant.get(f.key);
+      active.push(meant === undefined ? f : { ...f, value: meant });
+    }
+  });
+  const linear = linearise(hypothesis.reading, hypothesis.slipped, active);
+  logWeight +=
+    linear === null ? -Infinity : logProbability(active, linear, hypothesis.reading, hypothesis.errors);
+  return {
+    hypothesis,
+    logWeight,
+    predicted,
+    unexplained: [...without].map((i) => bench.fields[i]!.key),
+  };
+}
+
+/** ln of the probability mass of a number that something unknown produced. */
+function logUnknown(f: Field, expected: number): number {
+  return logUnknownDensity(f.value, expected) - Math.log(Math.abs(f.value)) + Math.log(2 * f.halfWidth);
+}
+
+function logMarginal(f: Field, expected: number, sd: number): number {
+  const z = (f.value - expected) / sd;
+  return -0.5 * (z * z + Math.log(2 * Math.PI)) - Math.log(sd) + Math.log(2 * f.halfWidth);
+}
+
+export const nothingFree: ReadonlySet<QuantityKey> = new Set();
+export const nothingMeant: ReadonlyMap<QuantityKey, number> = new Map();

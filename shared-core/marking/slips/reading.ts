@@ -1,0 +1,88 @@
+import type { Isotopologue } from '../../molecule/types.ts';
+import {
+  stackPrimitives,
+  type MethodExtra,
+  type StackedPrimitives,
+} from '../../reference/methods/constants-by-method.ts';
+import type { DeriveContext } from '../../reference/methods/derive.ts';
+import type { LineSet } from '../../reference/methods/line-sets.ts';
+import type { MethodSettings, PrescribedMethod } from '../../reference/types.ts';
+import type { SlipVariant } from './definition.ts';
+
+/**
+ * What a student who read the lines correctly (or in the way of one slip) would take from them: the primitives of the method, their
+ * covariance from the reference and from the choice of lines, and that of one unit of reading error (1 cm-1 on every line).
+ */
+export interface Reading {
+  readonly context: (values: readonly number[]) => DeriveContext;
+  readonly mean: readonly number[];
+  /** Row-major, p × p. */
+  readonly fixedCovariance: Float64Array;
+  readonly readingCovariance: Float64Array;
+}
+
+/** Sets that stand for all admissible ones when slips are weighed: the choice of lines moves values little beside a slip. */
+const mostSets = 9;
+
+/** At most nine sets, spread evenly over all. */
+export function representativeSets(sets: readonly LineSet[]): LineSet[] {
+  if (sets.length <= mostSets) return [...sets];
+  return Array.from(
+    { length: mostSets },
+    (_, i) => sets[Math.round((i * (sets.length - 1)) / (mostSets - 1))]!,
+  );
+}
+
+/** Sets grouped by their number of lines, each group cut to three: for replays, which depend much on that number. */
+export function setsByNumber(sets: readonly LineSet[]): LineSet[][] {
+  const groups = new Map<number, LineSet[]>();
+  for (const set of sets) {
+    const group = groups.get(set.lines.length) ?? [];
+    if (group.length < 3) group.push(set);
+    groups.set(set.lines.length, group);
+  }
+  return [...groups.values()];
+}
+
+/**
+ * Reading of a group of line sets, with a replay applied to each where there is one.
+ *
+ * The mean over the sets stands for all; their scatter joins the covariance. Null where no set carries the method.
+ */
+export function readingOf(
+  sets: readonly LineSet[],
+  method: PrescribedMethod,
+  settings: MethodSettings,
+  isotopologue: Isotopologue,
+  extra: MethodExtra,
+  replay: SlipVariant['replay'] = undefined,
+): Reading | null {
+  const stacks: StackedPrimitives[] = [];
+  for (const { lines } of sets) {
+    const replayed = replay === undefined ? { lines, method: null } : replay(lines);
+    if (replayed === null) continue;
+    const stacked = stackPrimitives(replayed.lines, replayed.method ?? method, settings, isotopologue, extra);
+    if ('reason' in stacked) continue;
+    if (stacks[0] === undefined || stacks[0].values.length === stacked.values.length) stacks.push(stacked);
+  }
+  const first = stacks[0];
+  if (first === undefined) return null;
+  const p = first.values.length;
+  const mean = first.values.map((_, i) => average(stacks.map((s) => s.values[i]!)));
+  const fixedCovariance = new Float64Array(p * p);
+  const readingCovariance = new Float64Array(p * p);
+  for (const { values, covariance, readingCovariance: reading } of stacks) {
+    for (let i = 0; i < p; i++) {
+      for (let j = 0; j < p; j++) {
+        const scatter = (values[i]! - mean[i]!) * (values[j]! - mean[j]!);
+        fixedCovariance[i * p + j]! += (covariance[i * p + j]! + scatter) / stacks.length;
+        readingCovariance[i * p + j]! += reading[i * p + j]! / stacks.length;
+      }
+    }
+  }
+  return { context: first.context, mean, fixedCovariance, readingCovariance };
+}
+
+function average(values: readonly number[]): number {
+  return values.reduce((a, b) => a + b, 0) / values.length;
+}

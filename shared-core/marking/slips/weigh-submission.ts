@@ -1,0 +1,138 @@
+import { isotopologuesOf } from '../../molecule/isotopologue.ts';
+import { publishedConstants } from '../../molecule/published-constants.ts';
+import { derive, standardSteps, type Step, type Values } from '../../reference/methods/derive.ts';
+import type { LineSet } from '../../reference/methods/line-sets.ts';
+import type { MethodLine } from '../../reference/methods/method-line.ts';
+import type { Isotopologue } from '../../molecule/types.ts';
+import type { PrescribedMethod } from '../../reference/types.ts';
+import type { QuantityKey } from '../../units/types.ts';
+import type { AnswerKey, NamedReference } from '../prescribe.ts';
+import { linesOfBand, otherHydrogen } from '../prescribe.ts';
+import type { MarkingScheme, SubmittedValue } from '../types.ts';
+import type { SlipSurroundings, SlipVariant } from './definition.ts';
+import { fieldsOf } from './fields.ts';
+import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
+import { readingOf, representativeSets, setsByNumber, type Reading } from './reading.ts';
+import { weighSlips, type Verdict } from './weigh-slips.ts';
+import { isotopologue as isotopologueNamed } from '../../molecule/isotopologue.ts';
+
+/** What else is known when the slips of one isotopologue's values are weighed. */
+export interface WeighOptions {
+  /** Method under which the values agree best. */
+  readonly method: PrescribedMethod;
+  readonly sets: readonly LineSet[];
+  /** True where the origin was accepted as the midpoint of R(0) and P(1) beside another method. */
+  readonly originByMidpoint: boolean;
+  /** Step of the file's abscissa, cm-1; null where unknown. */
+  readonly stepPerCm: number | null;
+  /** The student's own lines, where a table was handed in: then nothing is left to reading. */
+  readonly ownLines: readonly MethodLine[] | null;
+}
+
+/** Weighs all slips against the values of one isotopologue; null where there is nothing to weigh. */
+export function weighSubmission(
+  key: AnswerKey,
+  values: readonly SubmittedValue[],
+  references: readonly NamedReference[],
+  scheme: MarkingScheme,
+  options: WeighOptions,
+): Verdict | null {
+  const { molecule } = key;
+  if (molecule === null || options.sets.length === 0) return null;
+  const fields = fieldsOf(values);
+  const sets =
+    options.ownLines === null ? options.sets : [{ label: 'the lines handed in', lines: options.ownLines }];
+  const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
+  if (fields.length === 0 || reading === null) return null;
+  const groups = setsByNumber(sets);
+  const replayed = (variant: SlipVariant): { reading: Reading; share: number }[] =>
+    groups.flatMap((group) => {
+      const replay = readingOf(group, options.method, scheme, molecule, key.extra, variant.replay);
+      return replay === null ? [] : [{ reading: replay, share: 1 / groups.length }];
+    });
+  return weighSlips({
+    fields,
+    reading,
+    replayed,
+    errors: readingErrors(scheme, options),
+    surroundings: surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)), // prettier-ignore
+    steps: options.originByMidpoint ? { ...standardSteps, nu0: midpointOrigin } : standardSteps,
+    handbook: handbookValues(molecule, scheme),
+  });
+}
+
+/** ν̃0 by the midpoint lies αe below the fitted one. */
+const midpointOrigin: Step = (_, { read }) =>
+  read.nu0 === undefined || read.B0 === undefined || read.Bn === undefined
+    ? null
+    : read.nu0 + read.Bn - read.B0;
+
+/** The scheme's reading error; else about a third of the abscissa step; else the whole range from peak fit to ruler. */
+function readingErrors(scheme: MarkingScheme, options: WeighOptions): readonly ReadingError[] {
+  if (options.ownLines !== null) return [{ perCm: 1e-3, prior: 0.7 }, { perCm: 1e-2, prior: 0.3 }]; // prettier-ignore
+  if (scheme.readingErrorPerCm !== null) return readingErrorsAbout(scheme.readingErrorPerCm);
+  return options.stepPerCm === null ? unknownReadingErrors : readingErrorsAbout(options.stepPerCm / 3);
+}
+
+function surroundingsOf(
+  key: AnswerKey,
+  molecule: Isotopologue,
+  references: readonly NamedReference[],
+  scheme: MarkingScheme,
+  options: WeighOptions,
+  submitted: readonly QuantityKey[],
+): SlipSurroundings {
+  const numbers = options.sets.flatMap(({ lines }) => [
+    lines.filter((l) => l.m > 0).length,
+    lines.filter((l) => l.m < 0).length,
+  ]);
+  const published = publishedConstants(molecule.name);
+  return {
+    isotopologue: molecule,
+    settings: scheme,
+    method: options.method,
+    submitted: new Set(submitted),
+    linesASide: [...new Set(numbers)].filter((n) => n > 1).sort((a, b) => a - b),
+    otherHeavy: showing(otherHeavyOf(molecule), references),
+    otherLight: showing(otherHydrogen(molecule), references),
+    overtone: key.extra.overtone ?? null,
+    handbook:
+      published === null ? null : { omegaE: published.omegaEPerCm, omegaExe: published.omegaExePerCm },
+  };
+}
+
+/** The other common isotopologue with the same hydrogen: H37Cl for H35Cl. */
+function otherHeavyOf(molecule: Isotopologue): string | null {
+  const all = isotopologuesOf(molecule.gas).filter((i) => i.name !== molecule.name);
+  return all.find((i) => i.nuclides[0].name === molecule.nuclides[0].name)?.name ?? null;
+}
+
+function showing(
+  name: string | null,
+  references: readonly NamedReference[],
+): { isotopologue: Isotopologue; lines: readonly MethodLine[] } | null {
+  const molecule = name === null ? null : isotopologueNamed(name);
+  if (name === null || molecule === null) return null;
+  for (const { reference } of references) {
+    const lines = linesOfBand(reference, name, '1-0');
+    if (lines.length >= 6) return { isotopologue: molecule, lines };
+  }
+  return null;
+}
+
+/** Published constants of the isotopologue as a student would copy them, with what follows from them. */
+export function handbookValues(molecule: Isotopologue, scheme: MarkingScheme): Values {
+  const p = publishedConstants(molecule.name);
+  if (p === null) return {};
+  const { rotationalConstantEquilibriumPerCm: be, alphaEPerCm: alphaE } = p;
+  const nu0 = p.omegaEPerCm - 2 * p.omegaExePerCm + 3.25 * p.omegaEyePerCm;
+  const derived = derive({
+    settings: scheme,
+    reducedMassU: molecule.reducedMassU,
+    upper: 1,
+    read: { nu0, B0: be - alphaE / 2, Bn: be - 1.5 * alphaE, D: p.centrifugalConstantPerCm },
+    overtone: null,
+    partner: null,
+  });
+  return { ...derived, omegaE: p.omegaEPerCm, omegaExe: p.omegaExePerCm };
+}
