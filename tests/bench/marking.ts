@@ -1,7 +1,6 @@
 import type { StudentMethod } from '../../electron/backend/example/student-fit.ts';
 import type { SlipCode } from '../../electron/backend/example/student-slips.ts';
 import { markSubmission } from '../../shared-core/marking/mark-submission.ts';
-import { makeReference } from '../../shared-core/reference/make-reference.ts';
 import type { MarkedSubmission, MarkedValue } from '../../shared-core/marking/types.ts';
 import type { FileReference } from '../../shared-core/reference/types.ts';
 import type { QuantityKey } from '../../shared-core/units/types.ts';
@@ -24,8 +23,11 @@ export interface MarkingOptions {
 
 const spent = { references: 0, marking: 0, submissions: 0 };
 
+type Maker = typeof import('../../shared-core/reference/make-reference.ts').makeReference;
+let makeReference: Maker | null = null;
+
 function referenceOf(one: SimulatedSubmission, fromTruth: boolean): FileReference {
-  if (fromTruth) return truthReference(one.spectrum);
+  if (fromTruth || !makeReference) return truthReference(one.spectrum);
   const file = fileOf(one.spectrum, undefined, undefined, one.submission.spectra[0]!.replace('.csv', ''));
   return makeReference({ files: [file], settings: benchSettings });
 }
@@ -38,6 +40,7 @@ function marked(one: SimulatedSubmission, fromTruth: boolean): MarkedSubmission 
     one.submission,
     [{ file: one.submission.spectra[0]!, reference }],
     one.scheme,
+    { stepPerCmOf: () => one.spectrum.wavenumberPerCm[1]! - one.spectrum.wavenumberPerCm[0]! },
   );
   spent.references += between - started;
   spent.marking += performance.now() - between;
@@ -106,9 +109,14 @@ function tallyValues(one: SimulatedSubmission, result: MarkedSubmission, tally: 
   }
 }
 
+function told(one: SimulatedSubmission): string {
+  if (one.submission.lines.length > 0) return `${one.submission.lines.length} lines`;
+  return one.submission.lineCount === null ? 'nothing' : `the number ${one.submission.lineCount}`;
+}
+
 function note(one: SimulatedSubmission, text: string): void {
   console.error(
-    `marking ${one.submission.student} seed ${one.spectrum.truth.options.seed} ${one.course.gas} ${one.course.method} [${one.slips.join(' ') || 'honest'}]: ${text}`,
+    `marking ${one.submission.student} seed ${one.spectrum.truth.options.seed} ${one.course.gas} ${one.course.method} [${one.slips.join(' ') || 'honest'}] tells ${told(one)}: ${text}`,
   );
 }
 
@@ -334,7 +342,10 @@ function choiceOfLines(options: MarkingOptions): void {
   );
 }
 
-export function benchMarking(options: MarkingOptions, only: string | null): void {
+export async function benchMarking(options: MarkingOptions, only: string | null): Promise<void> {
+  if (!options.fromTruth) {
+    makeReference = (await import('../../shared-core/reference/make-reference.ts')).makeReference;
+  }
   if (only === null || 'single'.includes(only)) singleSlips(options);
   if (only === null || 'double'.includes(only)) doubleSlips(options);
   if (only === null || 'choice'.includes(only)) choiceOfLines(options);
