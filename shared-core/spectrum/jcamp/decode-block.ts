@@ -78,7 +78,7 @@ function checkOrdinate(
   span: number,
 ): void {
   if (!stated || !Number.isFinite(found)) return;
-  const tolerance = 1.01 * Math.abs(yFactor) + stated.unit + 2e-6 * Math.max(Math.abs(found), span);
+  const tolerance = 1.01 * Math.abs(yFactor) + 0.6 * stated.unit + 2e-6 * Math.max(Math.abs(found), span);
   if (near(stated.value, found, tolerance)) return;
   const raw = found / yFactor;
   if (near(stated.value, raw, 1.01 + 2e-6 * Math.abs(raw))) return;
@@ -117,7 +117,7 @@ function checkAbscissaLimits(header: Header, x: Float64Array, slack: number): vo
     ['MAXX', header.maxX, greatest],
     ['MINX', header.minX, least],
   ] as const) {
-    if (stated && !near(stated.value, found, slack + stated.unit + 1e-6 * Math.abs(found))) {
+    if (stated && !near(stated.value, found, slack + 0.6 * stated.unit + 1e-6 * Math.abs(found))) {
       refuseContradiction(`jcamp-${label.toLowerCase()}`, label, stated, found, 'the abscissa reaches');
     }
   }
@@ -155,7 +155,7 @@ function gridOf(header: Header, table: OrdinateTable, record: JcampRecord): Grid
   if (deltaX && lastX) {
     // DELTAX is often written without its sign.
     const slack =
-      deltaX.unit + (lastX.unit + (header.firstX?.unit ?? 0)) / (count - 1) + 1e-5 * Math.abs(step);
+      0.6 * deltaX.unit + (lastX.unit + (header.firstX?.unit ?? 0)) / (count - 1) + 1e-5 * Math.abs(step);
     if (!near(Math.abs(deltaX.value), Math.abs(step), slack)) {
       refuseContradiction('jcamp-deltax', 'DELTAX', deltaX, step, 'FIRSTX, LASTX and the number of points give'); // prettier-ignore
     }
