@@ -33,6 +33,8 @@ function instrument(random: Random): Partial<SimulationOptions> & { resolutionPe
   return {
     resolutionPerCm,
     apodisation: random.pick(apodisations),
+    // Instruments differ in what they call their resolution, and few of them step by a round number.
+    maximumPathDifferenceCm: (random.uniform() < 0.5 ? 1 : random.between(0.85, 1.1)) / resolutionPerCm,
     zeroFilling,
     noiseModel: random.uniform() < 0.5 ? 'white' : 'interferogram',
     noise: logUniform(random, 2e-4, 1.2e-2),
