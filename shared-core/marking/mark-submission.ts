@@ -29,6 +29,16 @@ export function markSubmission(
   scheme: MarkingScheme,
   options: MarkOptions = {},
 ): MarkedSubmission {
+  return markInParts(submission, references, scheme, options).marked;
+}
+
+/** The same, with what the section-wide observations need. */
+export function markInParts(
+  submission: Submission,
+  references: readonly NamedReference[],
+  scheme: MarkingScheme,
+  options: MarkOptions,
+): { readonly marked: MarkedSubmission; readonly parts: readonly MarkedPart[] } {
   const main = references[0]?.reference ?? null;
   const isotopologues = isotopologuesOf(submission, scheme, main);
   const parts = isotopologues.map((isotopologue) =>
@@ -37,7 +47,7 @@ export function markSubmission(
   const values = parts.flatMap((p) => p.values);
   const settled = values.filter((v) => v.points !== null);
   const source = parts.find((p) => p.key.source !== null)?.key.source ?? references[0] ?? null;
-  return {
+  const marked: MarkedSubmission = {
     submission,
     spectrum: source?.file ?? null,
     reference: source?.reference ?? null,
@@ -50,6 +60,7 @@ export function markSubmission(
     open: values.length - settled.length,
     remarks: remarksOf(submission, references),
   };
+  return { marked, parts };
 }
 
 /** Everything about one isotopologue of a submission. */

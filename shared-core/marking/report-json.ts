@@ -126,7 +126,6 @@ function jsonSafe<T extends Json>(value: T): T {
     throw new RangeError(`report: ${value} is no finite number; unknown values must be null`);
   }
   if (Array.isArray(value)) value.forEach((v) => jsonSafe(v as Json));
-  else if (value !== null && typeof value === 'object')
-    Object.values(value).forEach((v) => jsonSafe(v as Json));
+  else if (value !== null && typeof value === 'object') Object.values(value).forEach((v) => jsonSafe(v));
   return value;
 }

@@ -55,7 +55,7 @@ export function readingOf(
   settings: MethodSettings,
   isotopologue: Isotopologue,
   extra: MethodExtra,
-  replay: SlipVariant['replay'] = undefined,
+  replay?: SlipVariant['replay'],
 ): Reading | null {
   const stacks: StackedPrimitives[] = [];
   for (const { lines } of sets) {

@@ -1,4 +1,3 @@
-import { isotopologuesOf } from '../../molecule/isotopologue.ts';
 import { publishedConstants } from '../../molecule/published-constants.ts';
 import { derive, standardSteps, type Step, type Values } from '../../reference/methods/derive.ts';
 import type { LineSet } from '../../reference/methods/line-sets.ts';
@@ -8,6 +7,7 @@ import type { PrescribedMethod } from '../../reference/types.ts';
 import type { QuantityKey } from '../../units/types.ts';
 import type { AnswerKey, NamedReference } from '../prescribe.ts';
 import { linesOfBand, otherHydrogen } from '../prescribe.ts';
+import { otherHeavyOf } from '../published-lines.ts';
 import type { MarkingScheme, SubmittedValue } from '../types.ts';
 import type { SlipSurroundings, SlipVariant } from './definition.ts';
 import { fieldsOf } from './fields.ts';
@@ -99,12 +99,6 @@ function surroundingsOf(
     handbook:
       published === null ? null : { omegaE: published.omegaEPerCm, omegaExe: published.omegaExePerCm },
   };
-}
-
-/** The other common isotopologue with the same hydrogen: H37Cl for H35Cl. */
-function otherHeavyOf(molecule: Isotopologue): string | null {
-  const all = isotopologuesOf(molecule.gas).filter((i) => i.name !== molecule.name);
-  return all.find((i) => i.nuclides[0].name === molecule.nuclides[0].name)?.name ?? null;
 }
 
 function showing(

@@ -1,5 +1,7 @@
 import type { Field } from './fields.ts';
 
+const digits = Array.from('0123456789');
+
 /** A number that a slip of the pen may have been meant to be. */
 export interface MeantNumber {
   readonly code: 'digits-swapped' | 'digit-lost';
@@ -32,14 +34,14 @@ export function meantNumbers(field: Field): MeantNumber[] {
 }
 
 function digitPlaces(text: string): number[] {
-  return [...text].flatMap((c, i) => (c === '.' ? [] : [i]));
+  return Array.from(text).flatMap((c, i) => (c === '.' ? [] : [i]));
 }
 
 function swaps(text: string): string[] {
   const places = digitPlaces(text);
   return places.slice(1).map((j, n) => {
     const i = places[n]!;
-    const characters = [...text];
+    const characters = Array.from(text);
     [characters[i], characters[j]] = [characters[j]!, characters[i]!];
     return characters.join('');
   });
@@ -47,7 +49,7 @@ function swaps(text: string): string[] {
 
 function insertions(text: string): string[] {
   return Array.from({ length: text.length + 1 }, (_, i) => i).flatMap((i) =>
-    [...'0123456789'].map((d) => text.slice(0, i) + d + text.slice(i)),
+    digits.map((d) => text.slice(0, i) + d + text.slice(i)),
   );
 }
 
@@ -56,7 +58,5 @@ function deletions(text: string): string[] {
 }
 
 function replacements(text: string): string[] {
-  return digitPlaces(text).flatMap((i) =>
-    [...'0123456789'].map((d) => text.slice(0, i) + d + text.slice(i + 1)),
-  );
+  return digitPlaces(text).flatMap((i) => digits.map((d) => text.slice(0, i) + d + text.slice(i + 1)));
 }
