@@ -5,9 +5,8 @@ import type { ChosenSet } from './compare.ts';
 import { markValues } from './mark-values.ts';
 import { observationsOf } from './observations.ts';
 import { answerKey, type AnswerKey, type NamedReference } from './prescribe.ts';
-import { findingsOf } from './slips/explain.ts';
-import { weighSubmission } from './slips/weigh-submission.ts';
-import type { Verdict } from './slips/weigh-slips.ts';
+import { allFindings } from './slips/explain.ts';
+import { weighSubmission, type SubmissionVerdict } from './slips/weigh-submission.ts';
 import { ownLinesOf } from './student-lines.ts';
 import type { MarkedSubmission, MarkedValue, MarkingScheme, Submission } from './types.ts';
 
@@ -53,7 +52,7 @@ export function markInParts(
     reference: source?.reference ?? null,
     prescribed: Object.fromEntries(parts.map((p) => [p.key.isotopologue, p.prescribed])),
     values,
-    slips: parts.flatMap((p) => (p.verdict === null ? [] : findingsOf(p.verdict, p.key.isotopologue))),
+    slips: parts.flatMap((p) => (p.verdict === null ? [] : allFindings(p.verdict, p.key.isotopologue))),
     observations: parts.flatMap((p) => observationsOf(p, submission, scheme)),
     points: settled.length === 0 ? null : round(settled.reduce((sum, v) => sum + (v.points ?? 0), 0)),
     of: round(values.reduce((sum, v) => sum + v.of, 0)),
@@ -69,7 +68,7 @@ export interface MarkedPart {
   readonly values: readonly MarkedValue[];
   readonly chosen: readonly ChosenSet[];
   readonly prescribed: readonly PrescribedConstants[];
-  readonly verdict: Verdict | null;
+  readonly verdict: SubmissionVerdict | null;
 }
 
 function markIsotopologue(

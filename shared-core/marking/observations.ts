@@ -1,8 +1,8 @@
 import type { MarkedPart } from './mark-submission.ts';
-import { handbookCode, handbookProbability } from './slips/explain.ts';
+import { copiedKeys, handbookCode, handbookProbability } from './slips/explain.ts';
+import { lineName } from './slips/line-table.ts';
 import { shown, symbols } from './slips/numbers.ts';
 import { handbookValues } from './slips/weigh-submission.ts';
-import { matchesHandbook } from './slips/weigh-slips.ts';
 import type { MarkingScheme, Observation, Submission } from './types.ts';
 
 /** Advice that goes with every sign of copying. */
@@ -15,23 +15,24 @@ export function observationsOf(
   submission: Submission,
   scheme: MarkingScheme,
 ): Observation[] {
-  return [...handbook(part, scheme), ...figures(part, scheme), ...uncertainty(part, submission, scheme)];
+  return [
+    ...handbook(part, scheme),
+    ...oddLines(part),
+    ...figures(part, scheme),
+    ...uncertainty(part, submission, scheme),
+  ];
 }
 
 /** Values equal to a handbook to all their digits where the student's own file gives something else. */
 function handbook(part: MarkedPart, scheme: MarkingScheme): Observation[] {
-  const { verdict, key } = part;
+  const { key } = part;
+  const verdict = part.verdict?.values ?? null;
   if (verdict === null || key.molecule === null) return [];
   const published = handbookValues(key.molecule, scheme);
-  const equal = verdict.bench.fields.filter((f, i) => {
-    const value = published[f.key];
+  const copied = copiedKeys(verdict);
+  const equal = verdict.bench.fields.filter((f) => {
     const own = verdict.bench.correct.values[f.key]!;
-    return (
-      value !== undefined &&
-      matchesHandbook(f, value) &&
-      (f.submitted.figures ?? 0) >= 4 &&
-      Math.abs(value - own) > Math.max(3 * f.halfWidth, 0.3 * verdict.bench.generous[i]!)
-    );
+    return copied.has(f.key) && Math.abs((published[f.key] ?? own) - own) > 3 * f.halfWidth;
   });
   const probability = handbookProbability(verdict);
   if (equal.length === 0 || probability < 0.5) return [];
@@ -48,6 +49,24 @@ function handbook(part: MarkedPart, scheme: MarkingScheme): Observation[] {
         ['probability', probability],
         ...equal.map((f) => [f.key, f.value] as const),
       ]),
+    },
+  ];
+}
+
+/** Single lines of the table that stand away from where the file has them. */
+function oddLines(part: MarkedPart): Observation[] {
+  const odd = part.verdict?.lines?.odd ?? [];
+  if (odd.length === 0) return [];
+  const words = odd.map(
+    (l) =>
+      `${lineName(l.m)} at ${shown(l.wavenumberPerCm, 7)} cm⁻¹ (in the file at ${shown(l.expectedPerCm ?? 0, 7)})`,
+  );
+  return [
+    {
+      code: 'line-misread',
+      quantities: [],
+      text: `Lines of the table that are not where the file has them: ${words.join(', ')}.`,
+      figures: { lines: odd.length },
     },
   ];
 }

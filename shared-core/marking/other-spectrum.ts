@@ -27,7 +27,8 @@ export function otherSpectrum(
   all: readonly InParts[],
 ): Observation[] {
   return parts.flatMap((part) => {
-    const { verdict, key } = part;
+    const { key } = part;
+    const verdict = part.verdict?.values ?? null;
     if (verdict === null || verdict.bench.fields.length < fewestValues) return [];
     const own = Math.max(...verdict.accounts.map((a) => a.logWeight));
     const others = all.filter(({ marked: other }) => mayBeOther(marked, other));
@@ -36,12 +37,12 @@ export function otherSpectrum(
       const theirs = other.parts.find((p) => p.key.isotopologue === key.isotopologue);
       const file = theirs?.key.source?.file;
       if (theirs?.verdict == null || file === undefined || files.has(file)) continue;
-      const reading = theirs.verdict.bench.correctReading;
+      const reading = theirs.verdict.values.bench.correctReading;
       const bench = benchOf(verdict.bench.fields, reading, unslipped, unknownReadingErrors);
       if (bench === null || bench.fields.length < verdict.bench.fields.length) continue;
       const fit = weigh(bench, {
         causes: [], slipped: unslipped, reading, errors: unknownReadingErrors, logPrior: Math.log(priors.correct),
-        free: nothingFree, meant: nothingMeant,
+        free: nothingFree, copied: nothingFree, meant: nothingMeant,
       }); // prettier-ignore
       if (fit === null || fit.unexplained.length > 0) continue;
       files.set(file, { logWeight: fit.logWeight, student: other.marked.submission.student });

@@ -5,6 +5,7 @@ import {
   bothWays,
   carriedOn,
   needing,
+  seldom,
   type SlipDefinition,
   type Steps,
   type SlipVariant,
@@ -206,10 +207,12 @@ function alphaTimes(factor: number, word: string): SlipVariant[] {
       alphaE,
       Be: needing(['B0', 'B1', 'alphaE'], (v) => (v.B0 + v.B1) / 2 + v.alphaE),
     }),
-    carriedOn(`αe ${word}, Be = B_1 + 3αe/2 with it`, {
-      alphaE,
-      Be: needing(['B1', 'alphaE'], (v) => v.B1 + 1.5 * v.alphaE),
-    }),
+    seldom(
+      carriedOn(`αe ${word}, Be = B_1 + 3αe/2 with it`, {
+        alphaE,
+        Be: needing(['B1', 'alphaE'], (v) => v.B1 + 1.5 * v.alphaE),
+      }),
+    ),
   ];
 }
 

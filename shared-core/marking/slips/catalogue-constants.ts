@@ -3,7 +3,7 @@ import { atomicMassConstantKg, planckJs, speedOfLightMPerS } from '../../molecul
 import type { Isotopologue, Nuclide } from '../../molecule/types.ts';
 import type { Step } from '../../reference/methods/derive.ts';
 import { standardSteps } from '../../reference/methods/derive.ts';
-import { alone, carriedOn, type SlipDefinition, type Steps, type SlipVariant } from './definition.ts';
+import { alone, carriedOn, seldom, type SlipDefinition, type Steps, type SlipVariant } from './definition.ts';
 
 const lightCmPerS = 100 * speedOfLightMPerS;
 
@@ -128,8 +128,8 @@ function together(
   const r: Steps = { I: scaled('I', f.I), re: scaled('re', f.r), r0: scaled('r0', f.r) };
   return [
     alone(formula, { ...r, k: scaled('k', f.k) }),
-    alone(`${formula}, in r only`, r),
-    alone(`${formula}, in k only`, { k: scaled('k', f.k) }),
+    seldom(alone(`${formula}, in r only`, r), 0.5),
+    seldom(alone(`${formula}, in k only`, { k: scaled('k', f.k) }), 0.5),
   ];
 }
 
@@ -182,8 +182,8 @@ function massVariants(masses: readonly (readonly [string, number])[]): SlipVaria
         standardSteps[key]({ ...have, mu: u }, c);
     return [
       carriedOn(shown, { mu: step }),
-      alone(`${shown}, in r only`, { re: withMass('re'), r0: withMass('r0') }),
-      alone(`${shown}, in k only`, { k: withMass('k') }),
+      seldom(alone(`${shown}, in r only`, { re: withMass('re'), r0: withMass('r0') })),
+      seldom(alone(`${shown}, in k only`, { k: withMass('k') })),
     ];
   });
 }

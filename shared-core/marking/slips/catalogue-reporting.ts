@@ -1,6 +1,6 @@
 import type { QuantityKey } from '../../units/types.ts';
 import { bondLengthPm } from '../../reference/methods/physical-factors.ts';
-import { alone, needing, type SlipDefinition, type Steps, type SlipVariant } from './definition.ts';
+import { alone, needing, seldom, type SlipDefinition, type Steps, type SlipVariant } from './definition.ts';
 
 /** Slips of writing down that can be told from predicted values alone (digits are looked at in `written-slips.ts`). */
 export const reportingSlips: readonly SlipDefinition[] = [
@@ -10,14 +10,15 @@ export const reportingSlips: readonly SlipDefinition[] = [
     weight: 2,
     what: 'The bond length is in another unit than asked',
     variants: ({ submitted }) =>
-      lengths([100, 0.01, 1000, 0.001, 10, 0.1, 1e10, 1e-10, 1e12, 1e-12], submitted),
+      lengths([100, 0.01, 10, 0.1, 1000, 0.001, 1e10, 1e-10, 1e12, 1e-12], submitted),
   },
   {
     code: 'unit-k',
     family: 'reporting',
     weight: 2,
     what: 'The force constant is in another unit than asked',
-    variants: () => [1000, 0.001, 100, 0.01, 1e5, 1e-5].map((f) => scaledOnly(['k'], f)),
+    variants: () =>
+      [1000, 100, 0.01, 0.001, 1e5, 1e-5].map((f, i) => seldom(scaledOnly(['k'], f), i < 3 ? 1 : 0.3)),
   },
   {
     code: 'power-of-ten',
@@ -26,7 +27,9 @@ export const reportingSlips: readonly SlipDefinition[] = [
     what: 'A power of ten went wrong',
     variants: ({ submitted }) =>
       [...submitted].flatMap((key) =>
-        [-3, -2, -1, 1, 2, 3, 4, -4].map((n) => scaledOnly([key], 10 ** n, `${key} × 10^${n}`)),
+        [1, -1, 2, -2, 3, -3, 4, -4].map((n) =>
+          seldom(scaledOnly([key], 10 ** n, `${key} × 10^${n}`), 1 / Math.abs(n)),
+        ),
       ),
   },
   {
@@ -57,10 +60,13 @@ export const reportingSlips: readonly SlipDefinition[] = [
 
 function lengths(factors: readonly number[], submitted: ReadonlySet<QuantityKey>): SlipVariant[] {
   const keys = (['re', 'r0'] as const).filter((k) => submitted.has(k));
-  return factors.flatMap((f) => [
-    scaledOnly(keys, f),
-    ...(keys.length > 1 ? keys.map((k) => scaledOnly([k], f)) : []),
-  ]);
+  return factors.flatMap((f, i) => {
+    const often = i < 4 ? 1 : 0.3;
+    return [
+      seldom(scaledOnly(keys, f), often),
+      ...(keys.length > 1 ? keys.map((k) => seldom(scaledOnly([k], f), often / 3)) : []),
+    ];
+  });
 }
 
 function scaledOnly(keys: readonly QuantityKey[], factor: number, formula = `× ${factor}`): SlipVariant {

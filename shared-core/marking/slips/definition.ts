@@ -41,6 +41,8 @@ export interface SlipVariant {
   readonly replay?: (lines: readonly MethodLine[]) => ReplayedLines | null;
   readonly steps?: Steps;
   readonly carried: boolean;
+  /** How often this way is met beside the others of the same slip; 1 where absent. */
+  readonly often?: number;
 }
 
 export type SlipFamily = 'assignment' | 'coefficients' | 'vibration' | 'constants' | 'reporting';
@@ -60,7 +62,7 @@ export interface SlipDefinition {
 export function bothWays(formula: string, steps: Steps): SlipVariant[] {
   return [
     { formula, steps, carried: true },
-    { formula: `${formula}, not carried on`, steps, carried: false },
+    { formula: `${formula}, not carried on`, steps, carried: false, often: 0.5 },
   ];
 }
 
@@ -72,6 +74,11 @@ export function alone(formula: string, steps: Steps): SlipVariant {
 /** Later steps go on from the wrong value. */
 export function carriedOn(formula: string, steps: Steps): SlipVariant {
   return { formula, steps, carried: true };
+}
+
+/** A way that is met less often than the others of its slip. */
+export function seldom(variant: SlipVariant, often = 0.3): SlipVariant {
+  return { ...variant, often };
 }
 
 /** The values that the standard derivation of a step would read, or null where one is missing. */

@@ -3,6 +3,7 @@ import { quantityKeys, type QuantityKey } from '../../units/types.ts';
 import type { SlipFinding } from '../types.ts';
 import { slipNamed } from './catalogue.ts';
 import { shown, shownWithUnit, symbols } from './numbers.ts';
+import type { SubmissionVerdict } from './weigh-submission.ts';
 import type { Verdict } from './weigh-slips.ts';
 
 type Account = Verdict['accounts'][number];
@@ -25,7 +26,7 @@ const writtenSlips: Readonly<Record<string, string>> = {
  * Findings for one isotopologue: each code with its posterior probability (summed over the accounts that hold it), the quantities it
  * touches, the arithmetic, and what would tell it from its rivals. Empty where nothing earns it.
  */
-export function findingsOf(verdict: Verdict, isotopologue: string): SlipFinding[] {
+function findingsOf(verdict: Verdict, isotopologue: string, fromOwnLines: boolean): SlipFinding[] {
   const byCode = new Map<string, { probability: number; best: Account }>();
   let named = 0;
   for (const account of verdict.accounts) {
@@ -47,9 +48,19 @@ export function findingsOf(verdict: Verdict, isotopologue: string): SlipFinding[
     probability: Math.min(1, probability),
     isotopologue,
     quantities: touched(verdict, best, code),
-    text: sentence(verdict, best, code),
+    text: sentence(verdict, best, code, fromOwnLines),
     tellApart: rivals(code, best, ranked, verdict),
   }));
+}
+
+/** Findings from the table of lines (the first place where things go wrong) before those from the values. */
+export function allFindings(verdict: SubmissionVerdict, isotopologue: string): SlipFinding[] {
+  const fromValues = findingsOf(verdict.values, isotopologue, verdict.lines !== null);
+  const fromLines = verdict.lines?.findings ?? [];
+  const codes = new Set(fromLines.map((f) => f.code));
+  return [...fromLines, ...fromValues.filter((f) => !codes.has(f.code))].sort(
+    (a, b) => b.probability - a.probability,
+  );
 }
 
 /** Probability that a value was taken from a handbook. */
@@ -57,6 +68,11 @@ export function handbookProbability(verdict: Verdict): number {
   return verdict.accounts
     .filter((a) => a.hypothesis.causes.some((c) => c.code === handbookCode))
     .reduce((sum, a) => sum + a.probability, 0);
+}
+
+/** Quantities that the likeliest account with a handbook takes from it. */
+export function copiedKeys(verdict: Verdict): ReadonlySet<QuantityKey> {
+  return verdict.accounts.find((a) => a.hypothesis.copied.size > 0)?.hypothesis.copied ?? new Set();
 }
 
 /** Submitted quantities that the account moves away from correct work and explains. */
@@ -77,7 +93,7 @@ function touched(verdict: Verdict, account: Account, code: string): QuantityKey[
     .map((f) => f.key);
 }
 
-function sentence(verdict: Verdict, account: Account, code: string): string {
+function sentence(verdict: Verdict, account: Account, code: string, fromOwnLines: boolean): string {
   const cause = account.hypothesis.causes.find((c) => c.code === code)!;
   const what = slipNamed(code)?.what ?? writtenSlips[code] ?? code;
   const keys = touched(verdict, account, code);
@@ -87,7 +103,7 @@ function sentence(verdict: Verdict, account: Account, code: string): string {
     const meant = account.hypothesis.meant.get(key);
     const correct = verdict.bench.correct.values[key]!;
     if (meant !== undefined) return `${symbols[key]}: ${field.submitted.text} for ${shown(meant)}`;
-    return `${symbols[key]}: submitted ${shown(field.value)}, this step gives ${shown(account.predicted[key]!)}, correct work ${shownWithUnit(correct, unit)}`;
+    return `${symbols[key]}: submitted ${shown(field.value)}, this step gives ${shown(account.predicted[key]!)}, ${fromOwnLines ? 'correct work from the lines handed in' : 'correct work'} ${shownWithUnit(correct, unit)}`;
   });
   const rest = account.unexplained.map((key) => symbols[key]);
   return [

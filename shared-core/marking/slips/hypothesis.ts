@@ -31,6 +31,8 @@ export interface Hypothesis {
   readonly logPrior: number;
   /** Fields that are unknown by hypothesis (and may be carried on from). */
   readonly free: ReadonlySet<QuantityKey>;
+  /** Fields copied from a handbook to all their digits. */
+  readonly copied: ReadonlySet<QuantityKey>;
   /** Numbers taken as meant in place of those written, with their cause among `causes`. */
   readonly meant: ReadonlyMap<QuantityKey, number>;
 }
@@ -51,12 +53,18 @@ export interface Bench {
   /** Correct work: values, and the standard deviation of each field with a generous reading error. */
   readonly correct: LinearPrediction;
   readonly generous: readonly number[];
+  /** The same with a careful reading. */
+  readonly careful: readonly number[];
   readonly correctReading: Reading;
 }
 
 /** Generous windows decide only what is looked at closely; the weighing itself uses the stated errors. */
 const windowSigmas = 7;
 const mostUnexplained = 2;
+/** A careful reading of a line, cm-1 (common practice). */
+const carefulPerCm = 0.05;
+/** ln of the share of copied numbers that keep just these digits. */
+const logCopiedDigits = Math.log(1 / 3);
 
 export function benchOf(
   fields: readonly Field[],
@@ -69,10 +77,17 @@ export function benchOf(
   const correct = linearise(reading, base, known);
   if (correct === null || known.length === 0) return null;
   const largest = Math.max(...errors.map((e) => e.perCm));
+  const smallest = Math.min(...errors.map((e) => e.perCm));
   return {
     fields: known,
     correct,
     generous: standardDeviations(known, correct, reading, largest),
+    careful: standardDeviations(
+      known,
+      correct,
+      reading,
+      Math.min(carefulPerCm, Math.sqrt(smallest * largest)),
+    ),
     correctReading: reading,
   };
 }
@@ -118,9 +133,9 @@ export function weigh(bench: Bench, hypothesis: Hypothesis, values?: Values): We
         Math.abs((hypothesis.meant.get(f.key) ?? f.value) - (predicted[f.key] ?? f.value)) /
         bench.generous[i]!,
     }))
-    .filter(({ i, off: o }) => o > 0.3 && !off.includes(i) && !hypothesis.free.has(bench.fields[i]!.key))
+    .filter(({ i, off: o }) => o > 0.05 && !off.includes(i) && !hypothesis.free.has(bench.fields[i]!.key))
     .sort((a, b) => b.off - a.off)
-    .slice(0, 2);
+    .slice(0, hypothesis.causes.length === 0 && hypothesis.free.size === 0 ? bench.fields.length : 2);
   let best = first;
   for (const { i } of candidates) {
     const other = weighWithout(bench, hypothesis, predicted, new Set([...off, i]));
@@ -141,6 +156,8 @@ function weighWithout(
     const expected = bench.correct.values[f.key]!;
     if (hypothesis.free.has(f.key) || without.has(i)) {
       logWeight += logUnknown(f, expected) + (without.has(i) ? Math.log(priors.unknownValue) : 0);
+    } else if (hypothesis.copied.has(f.key)) {
+      logWeight += logCopiedDigits;
     } else if (predicted[f.key] === undefined) {
       logWeight += logMarginal(f, expected, bench.generous[i]!);
     } else {

@@ -25,10 +25,10 @@ export interface WeighInput {
   readonly fields: readonly Field[];
   /** Reading of correct lines. */
   readonly reading: Reading;
-  /** Readings of replayed lines, one per group of line sets with its share. */
-  readonly replayed: (
-    variant: SlipVariant,
-  ) => readonly { readonly reading: Reading; readonly share: number }[];
+  /** Number of groups of line sets, by number of lines; a replay depends much on that number. */
+  readonly groups: number;
+  /** Reading of the replayed lines of one group; null where they do not carry the method. */
+  readonly replayed: (variant: SlipVariant, group: number) => Reading | null;
   readonly errors: readonly ReadingError[];
   readonly surroundings: SlipSurroundings;
   /** Correct steps: the standard ones, or what an accepted method allows in their place. */
@@ -57,14 +57,14 @@ export function weighSlips(input: WeighInput): Verdict | null {
   const found: Weighed[] = [];
   const take = (h: Hypothesis, values?: Values): Weighed | null => {
     const weighed = weigh(bench, h, values);
-    if (weighed !== null) found.push(weighed);
+    if (weighed !== null && everyCauseExplains(weighed)) found.push(weighed);
     return weighed;
   };
   const correct = plain(input, [], base, Math.log(priors.correct));
   take(correct);
   const correctOff = misfits(bench, bench.correct.values, correct);
   for (const h of unknowns(input, bench)) take(h);
-  const candidates = singles(input, bench, correctOff.length > 0 || !settled(found));
+  const candidates = singles(input, bench, correctOff.length > 0 || stoodOff(bench) || !settled(found));
   for (const c of candidates) take(c.hypothesis);
   writtenSlips(bench, found, take);
   if (!settled(found)) {
@@ -76,6 +76,20 @@ export function weighSlips(input: WeighInput): Verdict | null {
     );
   }
   return { accounts: normalised(found), bench };
+}
+
+/** A named cause that leaves all that it moves unexplained explains nothing. */
+function everyCauseExplains({ hypothesis, unexplained }: Weighed): boolean {
+  return hypothesis.causes.every(
+    ({ moves }) => moves === undefined || [...moves].some((key) => !unexplained.includes(key)),
+  );
+}
+
+/** True where some value stands off correct work by more than a careful reading explains. */
+function stoodOff(bench: Bench): boolean {
+  return bench.fields.some(
+    (f, i) => Math.abs(f.value - bench.correct.values[f.key]!) > 2.5 * bench.careful[i]!,
+  );
 }
 
 /** True where some account without unknown parts already stands far above the rest. */
@@ -94,7 +108,16 @@ function plain(
   logPrior: number,
   reading: Reading = input.reading,
 ): Hypothesis {
-  return { causes, slipped, reading, errors: input.errors, logPrior, free: nothingFree, meant: nothingMeant };
+  return {
+    causes,
+    slipped,
+    reading,
+    errors: input.errors,
+    logPrior,
+    free: nothingFree,
+    copied: nothingFree,
+    meant: nothingMeant,
+  };
 }
 
 /** Every way of every slip that is not plainly out of the question. */
@@ -102,9 +125,11 @@ function singles(input: WeighInput, bench: Bench, withReplays: boolean): Candida
   const total = slipCatalogue.reduce((sum, d) => sum + d.weight, 0);
   return slipCatalogue.flatMap((definition) => {
     const variants = definition.variants(input.surroundings);
+    const all = variants.reduce((sum, v) => sum + (v.often ?? 1), 0);
     return variants.flatMap((variant) => {
       if (variant.replay !== undefined && !withReplays) return [];
-      const logPrior = Math.log((priors.oneSlip * shareOf(definition, total)) / variants.length);
+      const share = (variant.often ?? 1) / all;
+      const logPrior = Math.log(priors.oneSlip * shareOf(definition, total) * share);
       return asCandidates(input, bench, definition, variant, logPrior);
     });
   });
@@ -119,14 +144,51 @@ function asCandidates(
 ): Candidate[] {
   const slipped = withSlips(input.steps, [variant]);
   const readings =
-    variant.replay === undefined ? [{ reading: input.reading, share: 1 }] : input.replayed(variant);
-  return readings.flatMap(({ reading, share }) => {
+    variant.replay === undefined ? [input.reading] : replayedReadings(input, bench, variant, slipped);
+  return readings.flatMap((reading) => {
     const values = predict(reading.context(reading.mean), slipped);
     const cause = { code: definition.code, formula: variant.formula, moves: moved(bench, values) };
-    const hypothesis = plain(input, [cause], slipped, logPrior + Math.log(share), reading);
+    const hypothesis = plain(input, [cause], slipped, logPrior - Math.log(readings.length), reading);
     const off = misfits(bench, values, hypothesis);
     return cause.moves.size > 0 ? [{ hypothesis, variant, off }] : [];
   });
+}
+
+/**
+ * Readings of all groups, unless the values at the least, the middle and the largest number of lines already show that no number in
+ * between can fit: most of the cost of weighing lies here.
+ */
+function replayedReadings(
+  input: WeighInput,
+  bench: Bench,
+  variant: SlipVariant,
+  slipped: Hypothesis['slipped'],
+): Reading[] {
+  const last = input.groups - 1;
+  const coarse = [...new Set([0, Math.floor(last / 2), last])];
+  const known = new Map(coarse.map((g) => [g, input.replayed(variant, g)]));
+  const samples = [...known.values()].flatMap((r) =>
+    r === null ? [] : [predict(r.context(r.mean), slipped)],
+  );
+  if (samples.length === 0 || outOfReach(bench, samples) > Math.max(2, Math.floor(bench.fields.length / 2)))
+    return [];
+  return Array.from({ length: input.groups }, (_, g) => known.get(g) ?? input.replayed(variant, g)).filter(
+    (r) => r !== null,
+  );
+}
+
+/** Fields whose number lies beyond the range of the samples, widened. */
+function outOfReach(bench: Bench, samples: readonly Values[]): number {
+  let count = 0;
+  bench.fields.forEach((f, i) => {
+    const values = samples.flatMap((s) => s[f.key] ?? []);
+    if (values.length === 0) return;
+    const [low, high] = [Math.min(...values), Math.max(...values)];
+    const scale = Math.max(1, Math.abs(high / bench.correct.values[f.key]!));
+    const room = 0.3 * (high - low) + 7 * bench.generous[i]! * scale;
+    if (f.value < low - room || f.value > high + room) count++;
+  });
+  return count;
 }
 
 /** Submitted values that a slip moves by more than their last digits; one that moves none explains nothing. */
@@ -186,23 +248,27 @@ function impliedMass(
     : null;
 }
 
-/** Some or all values as a handbook has them, the later ones following from them or not. */
+/** One or all of the values that equal a handbook's, taken from it, the later ones following from them or not. */
 function handbookHypotheses(input: WeighInput, bench: Bench): Hypothesis[] {
   const keys = bench.fields.filter((f) => matchesHandbook(f, input.handbook[f.key])).map((f) => f.key);
   if (keys.length === 0) return [];
-  const steps: Steps = Object.fromEntries(keys.map((key) => [key, () => input.handbook[key] ?? null]));
-  const cause = [{ code: 'value-from-literature', formula: 'handbook value' }];
-  const prior = Math.log(priors.handbook / 2);
-  return [true, false].map((carried) =>
-    plain(input, cause, withSlips(input.steps, [{ steps, carried }]), prior),
-  );
+  const choices = keys.length === 1 ? [keys] : [keys, ...keys.map((k) => [k])];
+  const prior = Math.log(priors.handbook / (2 * choices.length));
+  return choices.flatMap((chosen) => {
+    const steps: Steps = Object.fromEntries(chosen.map((key) => [key, () => input.handbook[key] ?? null]));
+    const cause = [{ code: 'value-from-literature', formula: 'handbook value' }];
+    return [true, false].map((carried) => ({
+      ...plain(input, cause, withSlips(input.steps, [{ steps, carried }]), prior),
+      copied: new Set(chosen),
+    }));
+  });
 }
 
 /** Equal to the handbook in every digit that was written, with at least four of them. */
-export function matchesHandbook(f: Field, handbook: number | undefined): boolean {
+function matchesHandbook(f: Field, handbook: number | undefined): boolean {
   if (handbook === undefined) return false;
   const figures = f.submitted.figures ?? 4;
-  return figures >= 3 && Math.abs(f.value - handbook) <= f.halfWidth * 1.001;
+  return figures >= 4 && Math.abs(f.value - handbook) <= f.halfWidth * 1.001;
 }
 
 /** Numbers with a slip of the pen, on top of accounts that leave exactly such numbers unexplained. */

@@ -12,6 +12,7 @@ import type { MarkingScheme, SubmittedValue } from '../types.ts';
 import type { SlipSurroundings, SlipVariant } from './definition.ts';
 import { fieldsOf } from './fields.ts';
 import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
+import { lineTableVerdict, type LineTableVerdict } from './line-table.ts';
 import { readingOf, representativeSets, setsByNumber, type Reading } from './reading.ts';
 import { weighSlips, type Verdict } from './weigh-slips.ts';
 import { isotopologue as isotopologueNamed } from '../../molecule/isotopologue.ts';
@@ -29,36 +30,46 @@ export interface WeighOptions {
   readonly ownLines: readonly MethodLine[] | null;
 }
 
+/** The verdict on the values, and on the table of lines where there is one. */
+export interface SubmissionVerdict {
+  readonly values: Verdict;
+  readonly lines: LineTableVerdict | null;
+}
+
 /** Weighs all slips against the values of one isotopologue; null where there is nothing to weigh. */
 export function weighSubmission(
   key: AnswerKey,
-  values: readonly SubmittedValue[],
+  submitted: readonly SubmittedValue[],
   references: readonly NamedReference[],
   scheme: MarkingScheme,
   options: WeighOptions,
-): Verdict | null {
+): SubmissionVerdict | null {
   const { molecule } = key;
   if (molecule === null || options.sets.length === 0) return null;
-  const fields = fieldsOf(values);
+  const fields = fieldsOf(submitted);
   const sets =
     options.ownLines === null ? options.sets : [{ label: 'the lines handed in', lines: options.ownLines }];
   const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
   if (fields.length === 0 || reading === null) return null;
   const groups = setsByNumber(sets);
-  const replayed = (variant: SlipVariant): { reading: Reading; share: number }[] =>
-    groups.flatMap((group) => {
-      const replay = readingOf(group, options.method, scheme, molecule, key.extra, variant.replay);
-      return replay === null ? [] : [{ reading: replay, share: 1 / groups.length }];
-    });
-  return weighSlips({
+  const replayed = (variant: SlipVariant, group: number): Reading | null =>
+    readingOf(groups[group] ?? [], options.method, scheme, molecule, key.extra, variant.replay);
+  const surroundings = surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)); // prettier-ignore
+  const values = weighSlips({
     fields,
     reading,
+    groups: groups.length,
     replayed,
     errors: readingErrors(scheme, options),
-    surroundings: surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)), // prettier-ignore
+    surroundings,
     steps: options.originByMidpoint ? { ...standardSteps, nu0: midpointOrigin } : standardSteps,
     handbook: handbookValues(molecule, scheme),
   });
+  if (values === null) return null;
+  const { ownLines } = options;
+  const lines =
+    ownLines === null ? null : lineTableVerdict(ownLines, key.candidates, surroundings, key.isotopologue);
+  return { values, lines };
 }
 
 /** ν̃0 by the midpoint lies αe below the fitted one. */
@@ -69,7 +80,7 @@ const midpointOrigin: Step = (_, { read }) =>
 
 /** The scheme's reading error; else about a third of the abscissa step; else the whole range from peak fit to ruler. */
 function readingErrors(scheme: MarkingScheme, options: WeighOptions): readonly ReadingError[] {
-  if (options.ownLines !== null) return [{ perCm: 1e-3, prior: 0.7 }, { perCm: 1e-2, prior: 0.3 }]; // prettier-ignore
+  if (options.ownLines !== null) return [{ perCm: 1e-3, prior: 0.65 }, { perCm: 1e-2, prior: 0.25 }, { perCm: 0.1, prior: 0.1 }]; // prettier-ignore
   if (scheme.readingErrorPerCm !== null) return readingErrorsAbout(scheme.readingErrorPerCm);
   return options.stepPerCm === null ? unknownReadingErrors : readingErrorsAbout(options.stepPerCm / 3);
 }

@@ -157,12 +157,15 @@ function partOf(lines: readonly MethodLine[], method: PrescribedMethod): Primiti
   return result.ok ? result.primitives : null;
 }
 
+/** Built without intermediate arrays: it runs thousands of times when slips are weighed. */
 function slice(
   primitives: Primitives,
   values: readonly number[],
   from: number,
 ): Partial<Record<PrimitiveKey, number>> {
-  return Object.fromEntries(primitives.keys.map((key, i) => [key, values[from + i]!]));
+  const read: Partial<Record<PrimitiveKey, number>> = {};
+  for (let i = 0; i < primitives.keys.length; i++) read[primitives.keys[i]!] = values[from + i]!;
+  return read;
 }
 
 function blockCovariance(
