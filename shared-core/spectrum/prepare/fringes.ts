@@ -7,7 +7,7 @@ export interface Fringes {
 }
 
 /** In-place transform of a complex sequence whose length is a power of two. */
-function transform(re: Float64Array, im: Float64Array): void {
+export function transform(re: Float64Array, im: Float64Array): void {
   const n = re.length;
   for (let i = 1, j = 0; i < n; i++) {
     let bit = n >> 1;
