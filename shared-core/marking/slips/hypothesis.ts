@@ -61,6 +61,8 @@ export interface Bench {
 /** Generous windows decide only what is looked at closely; the weighing itself uses the stated errors. */
 const windowSigmas = 7;
 const mostUnexplained = 2;
+/** ln of the share of students who hand in a value that their own method does not yield. */
+const logExtraValue = Math.log(0.1);
 /** A careful reading of a line, cm-1 (common practice). */
 const carefulPerCm = 0.05;
 /** ln of the share of copied numbers that keep just these digits. */
@@ -112,6 +114,16 @@ export function misfits(
   return out;
 }
 
+/** True where every field stands within three careful standard deviations of what an account predicts. */
+export function fitsCarefully(bench: Bench, { hypothesis, predicted, unexplained }: Weighed): boolean {
+  return bench.fields.every((f, i) => {
+    const value = predicted[f.key];
+    if (value === undefined || unexplained.includes(f.key) || hypothesis.copied.has(f.key)) return true;
+    const scale = Math.max(1, Math.abs(value / bench.correct.values[f.key]!));
+    return Math.abs((hypothesis.meant.get(f.key) ?? f.value) - value) < 3 * bench.careful[i]! * scale;
+  });
+}
+
 /** Weighs a hypothesis; null where it leaves too much unexplained to be worth a closer look. */
 export function weigh(bench: Bench, hypothesis: Hypothesis, values?: Values): Weighed | null {
   const predicted =
@@ -159,7 +171,7 @@ function weighWithout(
     } else if (hypothesis.copied.has(f.key)) {
       logWeight += logCopiedDigits;
     } else if (predicted[f.key] === undefined) {
-      logWeight += logMarginal(f, expected, bench.generous[i]!);
+      logWeight += logMarginal(f, expected, bench.generous[i]!) + logExtraValue;
     } else {
       const meant = hypothesis.meant.get(f.key);
       active.push(meant === undefined ? f : { ...f, value: meant });

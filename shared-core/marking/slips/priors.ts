@@ -13,6 +13,9 @@ export const priors = {
   twoSlips: 0.05,
   /** A value from a handbook in place of the student's own. */
   handbook: 0.02,
+  /** Two digits exchanged, or one lost or mistyped, somewhere in a submission. */
+  digitsSwapped: 0.01,
+  digitLost: 0.006,
   /** Something unknown happened to one value, and the later ones follow from it. */
   unknownCarried: 0.05,
   /** Something unknown happened to the lines. */

@@ -1,11 +1,12 @@
 import { bondLengthFactor, forceConstantFactor } from '../../molecule/physical-constants.ts';
 import { forceConstantWavenumber, type Step, type Values } from '../../reference/methods/derive.ts';
 import type { QuantityKey } from '../../units/types.ts';
-import { slipCatalogue } from './catalogue.ts';
+import { slipCatalogue, slipNamed } from './catalogue.ts';
 import type { SlipDefinition, SlipSurroundings, SlipVariant, Steps } from './definition.ts';
 import type { Field } from './fields.ts';
 import {
   benchOf,
+  fitsCarefully,
   misfits,
   nothingFree,
   nothingMeant,
@@ -47,6 +48,8 @@ interface Candidate {
   readonly hypothesis: Hypothesis;
   readonly variant: SlipVariant;
   readonly off: readonly number[];
+  /** False where all that it moves is plainly not there: then it can only be the second of a pair. */
+  readonly explains: boolean;
 }
 
 /** Weighs correct work, every slip of the catalogue, pairs of them, handbook values and unknown causes against each other. */
@@ -64,16 +67,19 @@ export function weighSlips(input: WeighInput): Verdict | null {
   take(correct);
   const correctOff = misfits(bench, bench.correct.values, correct);
   for (const h of unknowns(input, bench)) take(h);
-  const candidates = singles(input, bench, correctOff.length > 0 || stoodOff(bench) || !settled(found));
-  for (const c of candidates) take(c.hypothesis);
-  writtenSlips(bench, found, take);
-  if (!settled(found)) {
-    pairs(input, bench, candidates, take);
-    writtenSlips(
-      bench,
-      found.filter((w) => w.hypothesis.causes.length === 1 && w.hypothesis.meant.size === 0),
-      take,
-    );
+  const candidates = singles(input, bench, correctOff.length > 0 || !correctStands(bench, found));
+  for (const c of candidates) if (c.explains) take(c.hypothesis);
+  if (!correctStands(bench, found)) {
+    onTop(input, bench, found, take);
+    if (!settled(bench, found)) {
+      pairs(input, bench, candidates, found, take);
+      onTop(
+        input,
+        bench,
+        found.filter((w) => w.hypothesis.causes.length === 1 && w.hypothesis.meant.size === 0),
+        take,
+      );
+    }
   }
   return { accounts: normalised(found), bench };
 }
@@ -92,13 +98,24 @@ function stoodOff(bench: Bench): boolean {
   );
 }
 
-/** True where some account without unknown parts already stands far above the rest. */
-function settled(found: readonly Weighed[]): boolean {
-  const best = found.reduce<Weighed | null>(
-    (a, b) => (a === null || b.logWeight > a.logWeight ? b : a),
-    null,
-  );
-  return best !== null && best.unexplained.length === 0 && best.hypothesis.free.size === 0;
+function best(found: readonly Weighed[]): Weighed | null {
+  return found.reduce<Weighed | null>((a, b) => (a === null || b.logWeight > a.logWeight ? b : a), null);
+}
+
+/** True where correct work explains everything, and better than anything weighed so far. */
+function correctStands(bench: Bench, found: readonly Weighed[]): boolean {
+  const top = best(found);
+  return top !== null && top.hypothesis.causes.length === 0 && complete(top) && !stoodOff(bench);
+}
+
+/** True where one cause at most explains every value closely: then no pair is looked for. */
+function settled(bench: Bench, found: readonly Weighed[]): boolean {
+  const top = best(found);
+  return top !== null && complete(top) && top.hypothesis.causes.length <= 1 && fitsCarefully(bench, top);
+}
+
+function complete({ hypothesis, unexplained }: Weighed): boolean {
+  return unexplained.length === 0 && hypothesis.free.size === 0;
 }
 
 function plain(
@@ -121,7 +138,12 @@ function plain(
 }
 
 /** Every way of every slip that is not plainly out of the question. */
-function singles(input: WeighInput, bench: Bench, withReplays: boolean): Candidate[] {
+function singles(
+  input: WeighInput,
+  bench: Bench,
+  withReplays: boolean,
+  mostOutOfReach = Math.max(2, Math.floor(bench.fields.length / 2)),
+): Candidate[] {
   const total = slipCatalogue.reduce((sum, d) => sum + d.weight, 0);
   return slipCatalogue.flatMap((definition) => {
     const variants = definition.variants(input.surroundings);
@@ -130,7 +152,7 @@ function singles(input: WeighInput, bench: Bench, withReplays: boolean): Candida
       if (variant.replay !== undefined && !withReplays) return [];
       const share = (variant.often ?? 1) / all;
       const logPrior = Math.log(priors.oneSlip * shareOf(definition, total) * share);
-      return asCandidates(input, bench, definition, variant, logPrior);
+      return asCandidates(input, bench, definition, variant, logPrior, mostOutOfReach);
     });
   });
 }
@@ -141,16 +163,21 @@ function asCandidates(
   definition: SlipDefinition,
   variant: SlipVariant,
   logPrior: number,
+  mostOutOfReach: number,
 ): Candidate[] {
   const slipped = withSlips(input.steps, [variant]);
   const readings =
-    variant.replay === undefined ? [input.reading] : replayedReadings(input, bench, variant, slipped);
+    variant.replay === undefined
+      ? [input.reading]
+      : replayedReadings(input, bench, variant, slipped, mostOutOfReach);
   return readings.flatMap((reading) => {
     const values = predict(reading.context(reading.mean), slipped);
     const cause = { code: definition.code, formula: variant.formula, moves: moved(bench, values) };
     const hypothesis = plain(input, [cause], slipped, logPrior - Math.log(readings.length), reading);
     const off = misfits(bench, values, hypothesis);
-    return cause.moves.size > 0 ? [{ hypothesis, variant, off }] : [];
+    // A slip all of whose effects are plainly not there explains nothing, alone or in a pair.
+    const explains = [...cause.moves].some((key) => !off.some((i) => bench.fields[i]!.key === key));
+    return cause.moves.size > 0 ? [{ hypothesis, variant, off, explains }] : [];
   });
 }
 
@@ -163,6 +190,7 @@ function replayedReadings(
   bench: Bench,
   variant: SlipVariant,
   slipped: Hypothesis['slipped'],
+  mostOutOfReach: number,
 ): Reading[] {
   const last = input.groups - 1;
   const coarse = [...new Set([0, Math.floor(last / 2), last])];
@@ -170,8 +198,7 @@ function replayedReadings(
   const samples = [...known.values()].flatMap((r) =>
     r === null ? [] : [predict(r.context(r.mean), slipped)],
   );
-  if (samples.length === 0 || outOfReach(bench, samples) > Math.max(2, Math.floor(bench.fields.length / 2)))
-    return [];
+  if (samples.length === 0 || outOfReach(bench, samples) > mostOutOfReach) return [];
   return Array.from({ length: input.groups }, (_, g) => known.get(g) ?? input.replayed(variant, g)).filter(
     (r) => r !== null,
   );
@@ -271,25 +298,33 @@ function matchesHandbook(f: Field, handbook: number | undefined): boolean {
   return figures >= 4 && Math.abs(f.value - handbook) <= f.halfWidth * 1.001;
 }
 
-/** Numbers with a slip of the pen, on top of accounts that leave exactly such numbers unexplained. */
-function writtenSlips(bench: Bench, found: readonly Weighed[], take: (h: Hypothesis) => void): void {
-  const best = [...found]
+/** Slips of the pen and handbook values, on top of accounts that leave just such numbers unexplained. */
+function onTop(
+  input: WeighInput,
+  bench: Bench,
+  found: readonly Weighed[],
+  take: (h: Hypothesis) => void,
+): void {
+  const most = [...found]
     .filter((w) => w.unexplained.length > 0)
     .sort((a, b) => b.logWeight - a.logWeight)
     .slice(0, 6);
-  for (const { hypothesis, predicted, unexplained } of best) {
+  for (const { hypothesis, predicted, unexplained } of most) {
     for (const key of unexplained) {
       const i = bench.fields.findIndex((f) => f.key === key);
       const field = bench.fields[i]!;
+      const expected = predicted[key];
+      if (expected === undefined) continue;
+      if (matchesHandbook(field, input.handbook[key])) take(copiedOnTop(hypothesis, key));
       for (const meant of meantNumbers(field)) {
-        if (Math.abs(meant.value - (predicted[key] ?? Infinity)) > 5 * bench.generous[i]!) continue;
-        const weight = meant.code === 'digits-swapped' ? 0.01 : 0.006;
+        const off = Math.abs(meant.value - expected);
+        // What is no nearer than the number as it stands is no slip of the pen.
+        if (off > 5 * bench.generous[i]! || 3 * off > Math.abs(field.value - expected)) continue;
+        const weight = meant.code === 'digits-swapped' ? priors.digitsSwapped : priors.digitLost;
+        const cause = { code: meant.code, formula: `${field.submitted.text} for ${meant.text}`, only: key };
         take({
           ...hypothesis,
-          causes: [
-            ...hypothesis.causes,
-            { code: meant.code, formula: `${field.submitted.text} for ${meant.text}` },
-          ],
+          causes: [...hypothesis.causes, cause],
           logPrior: hypothesis.logPrior + Math.log(weight / meant.among),
           meant: new Map([...hypothesis.meant, [key, meant.value]]),
         });
@@ -298,46 +333,80 @@ function writtenSlips(bench: Bench, found: readonly Weighed[], take: (h: Hypothe
   }
 }
 
-const mostFirstCauses = 14;
+function copiedOnTop(hypothesis: Hypothesis, key: QuantityKey): Hypothesis {
+  return {
+    ...hypothesis,
+    causes: [...hypothesis.causes, { code: 'value-from-literature', formula: 'handbook value' }],
+    logPrior: hypothesis.logPrior + Math.log(priors.handbook),
+    copied: new Set([...hypothesis.copied, key]),
+  };
+}
 
-/** Two causes together: first ones that explain something, with every second one that explains the rest. */
+const mostFirstCauses = 24;
+
+/**
+ * Two causes together: first ones that explain something, with every second one that explains the rest.
+ *
+ * Firsts are ranked by their weight with unexplained values taken as unknown; those with more of them follow by their number.
+ */
 function pairs(
   input: WeighInput,
   bench: Bench,
   candidates: readonly Candidate[],
+  found: readonly Weighed[],
   take: (h: Hypothesis, values: Values) => void,
 ): void {
+  const weights = new Map(found.map((w) => [w.hypothesis, w.logWeight]));
+  const score = (c: Candidate): number =>
+    weights.get(c.hypothesis) ?? -1e4 * (1 + c.off.length) + c.hypothesis.logPrior;
   const firsts = candidates
-    .filter((c) => c.off.length > 0 && c.off.length < bench.fields.length)
-    .sort((a, b) => a.off.length - b.off.length || b.hypothesis.logPrior - a.hypothesis.logPrior)
+    .filter((c) => c.explains)
+    .sort((a, b) => score(b) - score(a))
     .slice(0, mostFirstCauses);
-  const seconds = distinctVariants(candidates);
+  const replays = singles(input, bench, true, bench.fields.length - 1).filter(
+    (c) => c.variant.replay !== undefined,
+  );
+  const seconds = [...candidates.filter((c) => c.variant.replay === undefined), ...replays];
   for (const first of firsts) {
-    for (const second of seconds) {
-      const [a, b] = [first.hypothesis.causes[0]!, second.hypothesis.causes[0]!];
-      if (a.code === b.code || sameSteps(first.variant, second.variant)) continue;
-      const slipped = withSlips(input.steps, [first.variant, second.variant]);
-      const reading = first.hypothesis.reading;
-      const logPrior =
-        first.hypothesis.logPrior +
-        second.hypothesis.logPrior -
-        2 * Math.log(priors.oneSlip) +
-        Math.log(2 * priors.twoSlips);
-      const hypothesis = plain(input, [a, b], slipped, logPrior, reading);
-      const values = predict(reading.context(reading.mean), slipped);
-      if (misfits(bench, values, hypothesis).length === 0) take(hypothesis, values);
-    }
+    for (const second of seconds) tryPair(input, bench, first, second, take);
   }
 }
 
-/** Step slips, each once; replays enter pairs as first causes only. */
-function distinctVariants(candidates: readonly Candidate[]): Candidate[] {
-  return candidates.filter((c) => c.variant.replay === undefined);
+function tryPair(
+  input: WeighInput,
+  bench: Bench,
+  first: Candidate,
+  second: Candidate,
+  take: (h: Hypothesis, values: Values) => void,
+): void {
+  const [a, b] = [first.hypothesis.causes[0]!, second.hypothesis.causes[0]!];
+  if (a.code === b.code || !canCombine(first, second)) return;
+  // What is written down goes wrong last.
+  const inOrder = isReporting(a.code) ? [second.variant, first.variant] : [first.variant, second.variant];
+  const slipped = withSlips(input.steps, inOrder);
+  const reading = second.variant.replay === undefined ? first.hypothesis.reading : second.hypothesis.reading;
+  const logPrior =
+    first.hypothesis.logPrior +
+    second.hypothesis.logPrior -
+    2 * Math.log(priors.oneSlip) +
+    Math.log(2 * priors.twoSlips);
+  const hypothesis = plain(input, [a, b], slipped, logPrior, reading);
+  const values = predict(reading.context(reading.mean), slipped);
+  if (misfits(bench, values, hypothesis).length === 0) take(hypothesis, values);
 }
 
-function sameSteps(a: SlipVariant, b: SlipVariant): boolean {
-  const keys = Object.keys(a.steps ?? {});
-  return a.carried === b.carried && keys.some((key) => key in (b.steps ?? {}));
+/** One of two replays would undo the other; two causes at one step likewise, unless one of them only concerns the writing down. */
+function canCombine(first: Candidate, second: Candidate): boolean {
+  if (first.variant.replay !== undefined && second.variant.replay !== undefined) return false;
+  if (isReporting(first.hypothesis.causes[0]!.code) !== isReporting(second.hypothesis.causes[0]!.code))
+    return true;
+  const keys = Object.keys(first.variant.steps ?? {});
+  const others = second.variant.steps ?? {};
+  return first.variant.carried !== second.variant.carried || !keys.some((key) => key in others);
+}
+
+function isReporting(code: string): boolean {
+  return slipNamed(code)?.family === 'reporting';
 }
 
 function normalised(found: readonly Weighed[]): (Weighed & { probability: number })[] {
