@@ -1,4 +1,5 @@
-import { accuracyCases, type AccuracyRecord, type AccuracyTask } from './accuracy-cases.ts';
+import type { AccuracyRecord, AccuracyTask } from './accuracy-cases.ts';
+import { accuracyCases } from './accuracy-options.ts';
 import { percent, printTable } from './print.ts';
 import { spread } from './spread.ts';
 
