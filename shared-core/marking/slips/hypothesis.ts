@@ -114,14 +114,16 @@ export function misfits(
   return out;
 }
 
-/** True where every field stands within three careful standard deviations of what an account predicts. */
-export function fitsCarefully(bench: Bench, { hypothesis, predicted, unexplained }: Weighed): boolean {
-  return bench.fields.every((f, i) => {
-    const value = predicted[f.key];
-    if (value === undefined || unexplained.includes(f.key) || hypothesis.copied.has(f.key)) return true;
-    const scale = Math.max(1, Math.abs(value / bench.correct.values[f.key]!));
-    return Math.abs((hypothesis.meant.get(f.key) ?? f.value) - value) < 3 * bench.careful[i]! * scale;
-  });
+/** By how much ln of the probability would rise if every number stood exactly where the account puts it. */
+export function couldGain(bench: Bench, { hypothesis, predicted }: Weighed): number {
+  const active = bench.fields.filter((f) => predicted[f.key] !== undefined && !hypothesis.copied.has(f.key));
+  const asWritten = active.map((f) => ({ ...f, value: hypothesis.meant.get(f.key) ?? f.value }));
+  const linear = linearise(hypothesis.reading, hypothesis.slipped, active);
+  if (linear === null) return 0;
+  const exact = active.map((f) => ({ ...f, value: linear.values[f.key]! }));
+  const log = (fields: readonly Field[]): number =>
+    logProbability(fields, linear, hypothesis.reading, hypothesis.errors);
+  return log(exact) - log(asWritten);
 }
 
 /** Weighs a hypothesis; null where it leaves too much unexplained to be worth a closer look. */

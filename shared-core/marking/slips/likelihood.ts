@@ -49,9 +49,10 @@ export function linearise(
   const values = predict(reading.context(reading.mean), slipped);
   if (fields.some((f) => values[f.key] === undefined)) return null;
   const p = reading.mean.length;
+  const { fixed, reading: perUnit } = reading.covariances();
   const gradient = fields.map(() => new Float64Array(p));
   for (let j = 0; j < p; j++) {
-    const variance = reading.fixedCovariance[j * p + j]! + 0.01 * reading.readingCovariance[j * p + j]!;
+    const variance = fixed[j * p + j]! + 0.01 * perUnit[j * p + j]!;
     const h = Math.max(Math.sqrt(variance), 1e-9);
     const shifted = reading.mean.map((v, i) => (i === j ? v + h : v));
     const moved = predict(reading.context(shifted), slipped);
@@ -75,8 +76,8 @@ export function logProbability(
 ): number {
   const n = fields.length;
   if (n === 0) return 0;
-  const fixed = project(prediction.gradient, reading.fixedCovariance, reading.mean.length);
-  const perUnit = project(prediction.gradient, reading.readingCovariance, reading.mean.length);
+  const fixed = project(prediction.gradient, reading.covariances().fixed, reading.mean.length);
+  const perUnit = project(prediction.gradient, reading.covariances().reading, reading.mean.length);
   const off = fields.map((f) => f.value - prediction.values[f.key]!);
   const blurs = fields.some((f) => f.computed) ? computingBlur : [{ relative: 0, prior: 1 }];
   const terms: number[] = [];
@@ -103,8 +104,8 @@ export function standardDeviations(
   readingErrorPerCm: number,
 ): number[] {
   const n = fields.length;
-  const fixed = project(prediction.gradient, reading.fixedCovariance, reading.mean.length);
-  const perUnit = project(prediction.gradient, reading.readingCovariance, reading.mean.length);
+  const fixed = project(prediction.gradient, reading.covariances().fixed, reading.mean.length);
+  const perUnit = project(prediction.gradient, reading.covariances().reading, reading.mean.length);
   return fields.map((f, i) =>
     Math.sqrt(
       fixed[i * n + i]! +

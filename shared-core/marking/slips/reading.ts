@@ -16,9 +16,16 @@ import type { SlipVariant } from './definition.ts';
 export interface Reading {
   readonly context: (values: readonly number[]) => DeriveContext;
   readonly mean: readonly number[];
-  /** Row-major, p × p. */
-  readonly fixedCovariance: Float64Array;
-  readonly readingCovariance: Float64Array;
+  /** Covariances, worked out when they are first asked for: most readings are dismissed by their values alone. */
+  readonly covariances: () => ReadingCovariances;
+}
+
+/** Row-major, p × p. */
+export interface ReadingCovariances {
+  /** From the reference's lines and the choice of lines. */
+  readonly fixed: Float64Array;
+  /** For a reading error of 1 cm-1. */
+  readonly reading: Float64Array;
 }
 
 /** Sets that stand for all admissible ones when slips are weighed: the choice of lines moves values little beside a slip. */
@@ -67,20 +74,26 @@ export function readingOf(
   }
   const first = stacks[0];
   if (first === undefined) return null;
-  const p = first.values.length;
   const mean = first.values.map((_, i) => average(stacks.map((s) => s.values[i]!)));
-  const fixedCovariance = new Float64Array(p * p);
-  const readingCovariance = new Float64Array(p * p);
-  for (const { values, covariance, readingCovariance: reading } of stacks) {
+  let known: ReadingCovariances | null = null;
+  return { context: first.context, mean, covariances: () => (known ??= covariancesOf(stacks, mean)) };
+}
+
+function covariancesOf(stacks: readonly StackedPrimitives[], mean: readonly number[]): ReadingCovariances {
+  const p = mean.length;
+  const fixed = new Float64Array(p * p);
+  const reading = new Float64Array(p * p);
+  for (const { values, covariance, readingCovariance } of stacks) {
+    const [own, unit] = [covariance(), readingCovariance()];
     for (let i = 0; i < p; i++) {
       for (let j = 0; j < p; j++) {
         const scatter = (values[i]! - mean[i]!) * (values[j]! - mean[j]!);
-        fixedCovariance[i * p + j]! += (covariance[i * p + j]! + scatter) / stacks.length;
-        readingCovariance[i * p + j]! += reading[i * p + j]! / stacks.length;
+        fixed[i * p + j]! += (own[i * p + j]! + scatter) / stacks.length;
+        reading[i * p + j]! += unit[i * p + j]! / stacks.length;
       }
     }
   }
-  return { context: first.context, mean, fixedCovariance, readingCovariance };
+  return { fixed, reading };
 }
 
 function average(values: readonly number[]): number {

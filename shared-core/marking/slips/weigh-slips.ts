@@ -6,7 +6,7 @@ import type { SlipDefinition, SlipSurroundings, SlipVariant, Steps } from './def
 import type { Field } from './fields.ts';
 import {
   benchOf,
-  fitsCarefully,
+  couldGain,
   misfits,
   nothingFree,
   nothingMeant,
@@ -26,6 +26,11 @@ export interface WeighInput {
   readonly fields: readonly Field[];
   /** Reading of correct lines. */
   readonly reading: Reading;
+  /** The catalogue with the ways in which each slip can have happened here. */
+  readonly ways: readonly {
+    readonly definition: SlipDefinition;
+    readonly variants: readonly SlipVariant[];
+  }[];
   /** Number of groups of line sets, by number of lines; a replay depends much on that number. */
   readonly groups: number;
   /** Reading of the replayed lines of one group; null where they do not carry the method. */
@@ -108,11 +113,22 @@ function correctStands(bench: Bench, found: readonly Weighed[]): boolean {
   return top !== null && top.hypothesis.causes.length === 0 && complete(top) && !stoodOff(bench);
 }
 
-/** True where one cause at most explains every value closely: then no pair is looked for. */
+/**
+ * True where one cause at most explains every value about as closely as any account could: a second cause costs more prior
+ * probability than the fit could still gain.
+ */
 function settled(bench: Bench, found: readonly Weighed[]): boolean {
   const top = best(found);
-  return top !== null && complete(top) && top.hypothesis.causes.length <= 1 && fitsCarefully(bench, top);
+  return (
+    top !== null &&
+    complete(top) &&
+    top.hypothesis.causes.length <= 1 &&
+    couldGain(bench, top) < costOfSecondCause
+  );
 }
+
+/** ln of the prior probability that a second cause costs, and of what closer numbers gain by chance. */
+const costOfSecondCause = 13;
 
 function complete({ hypothesis, unexplained }: Weighed): boolean {
   return unexplained.length === 0 && hypothesis.free.size === 0;
@@ -145,8 +161,7 @@ function singles(
   mostOutOfReach = Math.max(2, Math.floor(bench.fields.length / 2)),
 ): Candidate[] {
   const total = slipCatalogue.reduce((sum, d) => sum + d.weight, 0);
-  return slipCatalogue.flatMap((definition) => {
-    const variants = definition.variants(input.surroundings);
+  return input.ways.flatMap(({ definition, variants }) => {
     const all = variants.reduce((sum, v) => sum + (v.often ?? 1), 0);
     return variants.flatMap((variant) => {
       if (variant.replay !== undefined && !withReplays) return [];
@@ -367,8 +382,14 @@ function pairs(
     (c) => c.variant.replay !== undefined,
   );
   const seconds = [...candidates.filter((c) => c.variant.replay === undefined), ...replays];
+  const unexplained = new Map(found.map((w) => [w.hypothesis, w.unexplained]));
   for (const first of firsts) {
-    for (const second of seconds) tryPair(input, bench, first, second, take);
+    const open = unexplained.get(first.hypothesis) ?? first.off.map((i) => bench.fields[i]!.key);
+    for (const second of seconds) {
+      // A second cause has to touch what the first leaves open.
+      if (open.length > 0 && !open.some((key) => second.hypothesis.causes[0]!.moves!.has(key))) continue;
+      tryPair(input, bench, first, second, take);
+    }
   }
 }
 

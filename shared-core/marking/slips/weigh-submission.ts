@@ -9,6 +9,7 @@ import type { AnswerKey, NamedReference } from '../prescribe.ts';
 import { linesOfBand, otherHydrogen } from '../prescribe.ts';
 import { otherHeavyOf } from '../published-lines.ts';
 import type { MarkingScheme, SubmittedValue } from '../types.ts';
+import { slipCatalogue } from './catalogue.ts';
 import type { SlipSurroundings, SlipVariant } from './definition.ts';
 import { fieldsOf } from './fields.ts';
 import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
@@ -52,12 +53,24 @@ export function weighSubmission(
   const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
   if (fields.length === 0 || reading === null) return null;
   const groups = setsByNumber(sets);
-  const replayed = (variant: SlipVariant, group: number): Reading | null =>
-    readingOf(groups[group] ?? [], options.method, scheme, molecule, key.extra, variant.replay);
+  const known = new Map<SlipVariant, (Reading | null)[]>();
+  const replayed = (variant: SlipVariant, group: number): Reading | null => {
+    const readings = known.get(variant) ?? [];
+    known.set(variant, readings);
+    return (readings[group] ??= readingOf(
+      groups[group] ?? [],
+      options.method,
+      scheme,
+      molecule,
+      key.extra,
+      variant.replay,
+    ));
+  };
   const surroundings = surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)); // prettier-ignore
   const values = weighSlips({
     fields,
     reading,
+    ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
     groups: groups.length,
     replayed,
     errors: readingErrors(scheme, options),

@@ -41,9 +41,9 @@ export interface StackedPrimitives {
   readonly partner: Primitives | null;
   readonly values: readonly number[];
   /** Row-major, cm-2, from the lines' own uncertainties. */
-  readonly covariance: Float64Array;
+  readonly covariance: () => Float64Array;
   /** The same for one unit of common line error (1 cm-1 on every line, independent): scale by a reading error squared. */
-  readonly readingCovariance: Float64Array;
+  readonly readingCovariance: () => Float64Array;
   readonly context: (values: readonly number[]) => DeriveContext;
 }
 
@@ -91,8 +91,8 @@ export function stackPrimitives(
     overtone,
     partner,
     values,
-    covariance: blockCovariance(parts, (line) => line.uncertaintyPerCm),
-    readingCovariance: blockCovariance(parts, () => 1),
+    covariance: () => blockCovariance(parts, (line) => line.uncertaintyPerCm ** 2),
+    readingCovariance: () => blockCovariance(parts, () => 1),
     context,
   };
 }
@@ -114,10 +114,11 @@ export function constantsByMethod(
   if ('reason' in stacked) return {};
   const values = derive(stacked.context(stacked.values));
   const constants: Partial<Record<QuantityKey, Measured>> = {};
+  const covariance = stacked.covariance();
   for (const key of Object.keys(values) as QuantityKey[]) {
     const { value, uncertainty } = propagate(
       stacked.values,
-      stacked.covariance,
+      covariance,
       (v) => derive(stacked.context(v))[key] ?? NaN,
     );
     const exact = key === 'mu' || (key === 'omegaExe' && settings.anharmonicityFrom === 'given');
@@ -170,20 +171,24 @@ function slice(
 
 function blockCovariance(
   parts: readonly { primitives: Primitives; lines: readonly MethodLine[] }[],
-  sigma: (line: MethodLine) => number,
+  variance: (line: MethodLine) => number,
 ): Float64Array {
   const n = parts.reduce((sum, p) => sum + p.primitives.keys.length, 0);
   const covariance = new Float64Array(n * n);
   let offset = 0;
   for (const { primitives, lines } of parts) {
-    primitives.weights.forEach((a, i) => {
-      primitives.weights.forEach((b, j) => {
+    const variances = lines.map(variance);
+    const { weights } = primitives;
+    for (let i = 0; i < weights.length; i++) {
+      for (let j = 0; j <= i; j++) {
+        const [a, b] = [weights[i]!, weights[j]!];
         let sum = 0;
-        for (let l = 0; l < lines.length; l++) sum += a[l]! * b[l]! * sigma(lines[l]!) ** 2;
+        for (let l = 0; l < variances.length; l++) sum += a[l]! * b[l]! * variances[l]!;
         covariance[(offset + i) * n + offset + j] = sum;
-      });
-    });
-    offset += primitives.keys.length;
+        covariance[(offset + j) * n + offset + i] = sum;
+      }
+    }
+    offset += weights.length;
   }
   return covariance;
 }

@@ -61,8 +61,10 @@ export function combine(n: number, ...terms: readonly (readonly [number, Float64
 }
 
 /** 1, m, m², … up to the degree. */
-export function powers(m: number, degree: number): number[] {
-  return Array.from({ length: degree + 1 }, (_, k) => m ** k);
+function powers(m: number, degree: number): number[] {
+  const row = [1];
+  for (let k = 1; k <= degree; k++) row.push(row[k - 1]! * m);
+  return row;
 }
 
 function apply(weights: Float64Array, lines: readonly MethodLine[]): number {

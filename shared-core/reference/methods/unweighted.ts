@@ -15,7 +15,8 @@ export function unweightedOperator(design: readonly (readonly number[])[]): Floa
   if (scale.some((s) => s === 0)) return null;
   const factor = choleskyOfNormalMatrix(design, scale);
   if (factor === null) return null;
-  const operator = Array.from({ length: p }, () => new Float64Array(n));
+  const operator: Float64Array[] = [];
+  for (let k = 0; k < p; k++) operator.push(new Float64Array(n));
   const column = new Float64Array(p);
   for (let i = 0; i < n; i++) {
     for (let k = 0; k < p; k++) column[k] = design[i]![k]! / scale[k]!;
@@ -37,7 +38,8 @@ function choleskyOfNormalMatrix(
   scale: Float64Array,
 ): Float64Array[] | null {
   const p = scale.length;
-  const factor = Array.from({ length: p }, () => new Float64Array(p));
+  const factor: Float64Array[] = [];
+  for (let a = 0; a < p; a++) factor.push(new Float64Array(p));
   for (const row of design) {
     for (let a = 0; a < p; a++) {
       const xa = row[a]! / scale[a]!;
