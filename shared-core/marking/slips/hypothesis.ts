@@ -55,6 +55,12 @@ export interface Bench {
   readonly generous: readonly number[];
   /** The same with a careful reading. */
   readonly careful: readonly number[];
+  /** For each reading error: its prior, the standard deviations of the fields, and the highest ln density of all of them together. */
+  readonly levels: readonly {
+    readonly logPrior: number;
+    readonly deviations: readonly number[];
+    readonly logPeak: number;
+  }[];
   readonly correctReading: Reading;
 }
 
@@ -80,9 +86,15 @@ export function benchOf(
   if (correct === null || known.length === 0) return null;
   const largest = Math.max(...errors.map((e) => e.perCm));
   const smallest = Math.min(...errors.map((e) => e.perCm));
+  const exact = known.map((f) => ({ ...f, value: correct.values[f.key]! }));
   return {
     fields: known,
     correct,
+    levels: errors.map((error) => ({
+      logPrior: Math.log(error.prior),
+      deviations: standardDeviations(known, correct, reading, error.perCm),
+      logPeak: logProbability(exact, correct, reading, [{ ...error, prior: 1 }]),
+    })),
     generous: standardDeviations(known, correct, reading, largest),
     careful: standardDeviations(
       known,
@@ -112,6 +124,26 @@ export function misfits(
     if (Math.abs(value - predicted) > windowSigmas * bench.generous[i]! * scale) out.push(i);
   }
   return out;
+}
+
+/**
+ * About the most that a hypothesis can weigh: for each reading error the peak of the density of correct work, less half the square of
+ * the worst single deviation. Cheap, and good enough to decide what is worth weighing.
+ */
+export function mostWeight(bench: Bench, values: Values, hypothesis: Hypothesis): number {
+  let most = -Infinity;
+  for (const { logPrior, deviations, logPeak } of bench.levels) {
+    let worst = 0;
+    for (let i = 0; i < bench.fields.length; i++) {
+      const f = bench.fields[i]!;
+      const predicted = values[f.key];
+      if (predicted === undefined) continue;
+      const scale = Math.max(1, Math.abs(predicted / bench.correct.values[f.key]!));
+      worst = Math.max(worst, Math.abs(f.value - predicted) / (deviations[i]! * scale));
+    }
+    most = Math.max(most, logPrior + logPeak - 0.5 * worst * worst);
+  }
+  return hypothesis.logPrior + most;
 }
 
 /** By how much ln of the probability would rise if every number stood exactly where the account puts it. */

@@ -8,6 +8,7 @@ import {
   benchOf,
   couldGain,
   misfits,
+  mostWeight,
   nothingFree,
   nothingMeant,
   weigh,
@@ -55,6 +56,8 @@ interface Candidate {
   readonly off: readonly number[];
   /** False where all that it moves is plainly not there: then it can only be the second of a pair. */
   readonly explains: boolean;
+  /** About the most that it can weigh. */
+  readonly most: number;
 }
 
 /** Weighs correct work, every slip of the catalogue, pairs of them, handbook values and unknown causes against each other. */
@@ -73,8 +76,10 @@ export function weighSlips(input: WeighInput): Verdict | null {
   const correctOff = misfits(bench, bench.correct.values, correct);
   for (const h of unknowns(input, bench)) take(h);
   const candidates = singles(input, bench, correctOff.length > 0 || !correctStands(bench, found));
-  for (const c of candidates) if (c.explains) take(c.hypothesis);
+  weighLikeliest(candidates, found, take);
   if (!correctStands(bench, found)) {
+    if (!settled(bench, found))
+      for (const c of candidates) if (c.explains && c.off.length > 0) take(c.hypothesis);
     onTop(input, bench, found, take);
     if (!settled(bench, found)) {
       pairs(input, bench, candidates, found, take);
@@ -102,6 +107,22 @@ function stoodOff(bench: Bench): boolean {
     (f, i) => Math.abs(f.value - bench.correct.values[f.key]!) > 2.5 * bench.careful[i]!,
   );
 }
+
+/** Candidates that leave nothing plainly unexplained, from the likeliest on, until the rest cannot matter. */
+function weighLikeliest(
+  candidates: readonly Candidate[],
+  found: readonly Weighed[],
+  take: (h: Hypothesis) => void,
+): void {
+  const complete = candidates.filter((c) => c.off.length === 0).sort((a, b) => b.most - a.most);
+  for (const c of complete) {
+    if (c.most < (best(found)?.logWeight ?? -Infinity) - cannotMatter) return;
+    take(c.hypothesis);
+  }
+}
+
+/** ln of the odds beyond which an account is not worth weighing; generous, since the most it can weigh is only about known. */
+const cannotMatter = 14;
 
 function best(found: readonly Weighed[]): Weighed | null {
   return found.reduce<Weighed | null>((a, b) => (a === null || b.logWeight > a.logWeight ? b : a), null);
@@ -192,7 +213,8 @@ function asCandidates(
     const off = misfits(bench, values, hypothesis);
     // A slip all of whose effects are plainly not there explains nothing, alone or in a pair.
     const explains = [...cause.moves].some((key) => !off.some((i) => bench.fields[i]!.key === key));
-    return cause.moves.size > 0 ? [{ hypothesis, variant, off, explains }] : [];
+    if (cause.moves.size === 0) return [];
+    return [{ hypothesis, variant, off, explains, most: mostWeight(bench, values, hypothesis) }];
   });
 }
 
@@ -388,7 +410,7 @@ function pairs(
     for (const second of seconds) {
       // A second cause has to touch what the first leaves open.
       if (open.length > 0 && !open.some((key) => second.hypothesis.causes[0]!.moves!.has(key))) continue;
-      tryPair(input, bench, first, second, take);
+      tryPair(input, bench, first, second, found, take);
     }
   }
 }
@@ -398,6 +420,7 @@ function tryPair(
   bench: Bench,
   first: Candidate,
   second: Candidate,
+  found: readonly Weighed[],
   take: (h: Hypothesis, values: Values) => void,
 ): void {
   const [a, b] = [first.hypothesis.causes[0]!, second.hypothesis.causes[0]!];
@@ -413,7 +436,9 @@ function tryPair(
     Math.log(2 * priors.twoSlips);
   const hypothesis = plain(input, [a, b], slipped, logPrior, reading);
   const values = predict(reading.context(reading.mean), slipped);
-  if (misfits(bench, values, hypothesis).length === 0) take(hypothesis, values);
+  if (misfits(bench, values, hypothesis).length > 0) return;
+  if (mostWeight(bench, values, hypothesis) > (best(found)?.logWeight ?? -Infinity) - cannotMatter)
+    take(hypothesis, values);
 }
 
 /** One of two replays would undo the other; two causes at one step likewise, unless one of them only concerns the writing down. */

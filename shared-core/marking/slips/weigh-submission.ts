@@ -50,26 +50,30 @@ export function weighSubmission(
   const fields = fieldsOf(submitted);
   const sets =
     options.ownLines === null ? options.sets : [{ label: 'the lines handed in', lines: options.ownLines }];
-  const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
-  if (fields.length === 0 || reading === null) return null;
+  const correctReading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
+  if (fields.length === 0 || correctReading === null) return null;
   const groups = setsByNumber(sets);
-  const known = new Map<SlipVariant, (Reading | null)[]>();
+  const known = new Map<SlipVariant, Map<number, Reading | null>>();
   const replayed = (variant: SlipVariant, group: number): Reading | null => {
-    const readings = known.get(variant) ?? [];
+    const readings = known.get(variant) ?? new Map<number, Reading | null>();
     known.set(variant, readings);
-    return (readings[group] ??= readingOf(
+    const before = readings.get(group);
+    if (before !== undefined) return before;
+    const reading = readingOf(
       groups[group] ?? [],
       options.method,
       scheme,
       molecule,
       key.extra,
       variant.replay,
-    ));
+    );
+    readings.set(group, reading);
+    return reading;
   };
   const surroundings = surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)); // prettier-ignore
   const values = weighSlips({
     fields,
-    reading,
+    reading: correctReading,
     ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
     groups: groups.length,
     replayed,

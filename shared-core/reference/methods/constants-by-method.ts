@@ -92,7 +92,7 @@ export function stackPrimitives(
     partner,
     values,
     covariance: () => blockCovariance(parts, (line) => line.uncertaintyPerCm ** 2),
-    readingCovariance: () => blockCovariance(parts, () => 1),
+    readingCovariance: () => blockDiagonal(parts.map((p) => p.primitives)),
     context,
   };
 }
@@ -191,4 +191,20 @@ function blockCovariance(
     offset += weights.length;
   }
   return covariance;
+}
+
+function blockDiagonal(blocks: readonly Primitives[]): Float64Array {
+  if (blocks.length === 1) return blocks[0]!.readingCovariance;
+  const n = blocks.reduce((sum, b) => sum + b.keys.length, 0);
+  const whole = new Float64Array(n * n);
+  let offset = 0;
+  for (const { keys, readingCovariance } of blocks) {
+    for (let i = 0; i < keys.length; i++) {
+      for (let j = 0; j < keys.length; j++) {
+        whole[(offset + i) * n + offset + j] = readingCovariance[i * keys.length + j]!;
+      }
+    }
+    offset += keys.length;
+  }
+  return whole;
 }

@@ -17,6 +17,8 @@ export interface Primitives {
   readonly keys: readonly PrimitiveKey[];
   readonly values: readonly number[];
   readonly weights: readonly Float64Array[];
+  /** Covariance for an independent error of 1 cm-1 on every line: weights · weightsᵀ, row-major. */
+  readonly readingCovariance: Float64Array;
 }
 
 /** A method applied to lines: its primitives, or a sentence why these lines do not carry it. */

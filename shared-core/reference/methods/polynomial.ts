@@ -47,10 +47,24 @@ export function outcome(
     ok: true,
     primitives: {
       keys: linear.map(([key]) => key),
-      values: linear.map(([, weights]) => apply(weights, lines)),
+      values: linear.map(([, weights]) => applyWeights(weights, lines)),
       weights: linear.map(([, weights]) => weights),
+      readingCovariance: products(linear.map(([, weights]) => weights)),
     },
   };
+}
+
+function products(weights: readonly Float64Array[]): Float64Array {
+  const n = weights.length;
+  const covariance = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < n; j++) {
+      let sum = 0;
+      for (let l = 0; l < weights[i]!.length; l++) sum += weights[i]![l]! * weights[j]![l]!;
+      covariance[i * n + j] = sum;
+    }
+  }
+  return covariance;
 }
 
 /** Σ factor · weights. */
@@ -67,7 +81,8 @@ function powers(m: number, degree: number): number[] {
   return row;
 }
 
-function apply(weights: Float64Array, lines: readonly MethodLine[]): number {
+/** Σ weight · wavenumber. */
+export function applyWeights(weights: Float64Array, lines: readonly MethodLine[]): number {
   // Taken from the first line, which keeps the rounding error of large wavenumbers out of small constants.
   const origin = lines[0]?.wavenumberPerCm ?? 0;
   let sum = 0;
