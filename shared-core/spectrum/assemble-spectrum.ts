@@ -104,6 +104,19 @@ function refuseCounting(x: Float64Array): void {
   }
 }
 
+/** A point far from all others is a damaged number, not a measurement. */
+function refuseOutlier(x: Float64Array): void {
+  const n = x.length;
+  const above = x[n - 1]! - x[n - 2]! > 2 * (x[n - 2]! - x[0]!);
+  const below = x[1]! - x[0]! > 2 * (x[n - 1]! - x[1]!);
+  if (!above && !below) return;
+  const value = Number((above ? x[n - 1]! : x[0]!).toPrecision(9));
+  refuse(
+    'abscissa-outlier',
+    `One point stands at ${value}, far from all others (${x[1]!} to ${x[n - 2]!}): its abscissa is damaged, mend the line or export the file again.`,
+  );
+}
+
 function refuseTooFew(count: number): void {
   if (count >= leastPoints) return;
   refuse(
@@ -152,6 +165,7 @@ export function assembleSpectrum(raw: RawPoints): Spectrum {
   const ascending = sorted(complete, notes);
   refuseTooFew(ascending.x.length);
   refuseCounting(ascending.x);
+  refuseOutlier(ascending.x);
   const { points, decision } = inWavenumbers(ascending, raw, notes);
   refuseTooFew(points.x.length);
   const ordinate = decideOrdinate(points.y, raw.ordinateLabel);

@@ -31,7 +31,7 @@ export class Row {
 }
 
 function isBlank(code: number): boolean {
-  return code === 32 || code === tab || code === 0xa0;
+  return code === 32 || code === tab || code === 0xa0 || code === 0x202f || code === 0xfeff;
 }
 
 function takeCell(text: string, start: number, end: number, decimalMark: number, row: Row): void {

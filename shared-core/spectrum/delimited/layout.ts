@@ -19,6 +19,8 @@ const candidates: readonly Layout[] = [
 export interface FoundLayout extends Layout {
   /** Cells of a row, trailing blank ones not counted. */
   readonly columns: number;
+  /** Fewest cells of a row, trailing blank ones counted: what nearly all rows of the sample have. */
+  readonly leastCells: number;
   /** Rows of the sample that are numbers with this many cells. */
   readonly rows: number;
 }
@@ -36,6 +38,7 @@ function sampleOf(lines: readonly string[]): number[] {
 function tryLayout(lines: readonly string[], sample: readonly number[], layout: Layout): FoundLayout {
   const row = new Row();
   const byColumns = new Map<number, number>();
+  const byCells = new Map<number, number>();
   for (const i of sample) {
     const text = lines[i]!;
     if (text.length === 0 || text.length > 20_000) continue;
@@ -44,10 +47,13 @@ function tryLayout(lines: readonly string[], sample: readonly number[], layout: 
     // A blank last cell may be a missing ordinate as well as a trailing delimiter: the mode decides.
     const columns = row.count - row.trailingBlanks;
     byColumns.set(columns, (byColumns.get(columns) ?? 0) + 1);
+    byCells.set(row.count, (byCells.get(row.count) ?? 0) + 1);
   }
   let best = { columns: 0, rows: 0 };
   for (const [columns, rows] of byColumns) if (rows > best.rows) best = { columns, rows };
-  return { ...layout, ...best };
+  // With a trailing delimiter in nearly every row, a row without one has lost a cell.
+  const [cells] = [...byCells].find(([, rows]) => rows > 0.9 * best.rows) ?? [best.columns];
+  return { ...layout, ...best, leastCells: Math.max(cells, best.columns) };
 }
 
 /** The layout that reads most of the sampled lines as rows of numbers of one length; null where none does. */

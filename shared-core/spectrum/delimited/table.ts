@@ -1,7 +1,7 @@
 import type { Reason } from '../../units/types.ts';
 import { counted, quoted, refuse } from '../refusal.ts';
 import { comma } from '../text/written-number.ts';
-import { blanks, readRow, Row, type Layout } from './cells.ts';
+import { blanks, readRow, Row, textCells, type Layout } from './cells.ts';
 import { findLayout, type FoundLayout } from './layout.ts';
 
 export interface NumberTable {
@@ -23,10 +23,9 @@ function isSkipped(text: string, layout: Layout): boolean {
   return layout.delimiter !== 59 && text.trimStart().startsWith(';');
 }
 
-function isDataRow(row: Row, columns: number): boolean {
-  return (
-    row.firstText < 0 && row.numbers >= 1 && row.count >= columns && row.count - row.trailingBlanks <= columns
-  );
+function isDataRow(row: Row, layout: FoundLayout): boolean {
+  const filled = row.count - row.trailingBlanks;
+  return row.firstText < 0 && row.numbers >= 1 && row.count >= layout.leastCells && filled <= layout.columns;
 }
 
 function hasContent(text: string): boolean {
@@ -41,7 +40,7 @@ function findStart(lines: readonly string[], layout: FoundLayout, row: Row): num
     const text = lines[i]!;
     if (!hasContent(text) || isSkipped(text, layout)) continue;
     readRow(text, layout, row);
-    if (isDataRow(row, layout.columns)) {
+    if (isDataRow(row, layout)) {
       if (run === 0) runStart = i;
       if (++run === 5) return runStart;
     } else run = 0;
@@ -54,6 +53,24 @@ function firstNumber(text: string, layout: Layout, row: Row): number {
   return row.values[0]!;
 }
 
+/** A last header line that turns into the point before the first one when a stray character is taken out of it. */
+function refuseDamagedFirstRow(
+  lines: readonly string[],
+  start: number,
+  first: number,
+  step: number,
+  layout: FoundLayout,
+  row: Row,
+): void {
+  const at = lines.slice(0, start).findLastIndex(hasContent);
+  if (at < 0 || isSkipped(lines[at]!, layout)) return;
+  const text = lines[at]!.trim();
+  const cell = (layout.delimiter === blanks ? text.split(/\s+/)[0] : textCells(text, layout)[0]) ?? '';
+  const digits = cell.replace(layout.decimalMark === comma ? /[^\d,]/g : /[^\d.]/g, '').replace(',', '.');
+  const back = (first - Number(digits)) / step;
+  if (digits.length >= 0.6 * cell.length && back > 0.5 && back < 2.5) refuseRow(lines[at]!, at, layout, row);
+}
+
 /** Rows above the start that continue the abscissa of the data belong to it: then the line between is damage. */
 function refuseDamagedStart(lines: readonly string[], start: number, layout: FoundLayout, row: Row): void {
   const following = lines
@@ -63,12 +80,13 @@ function refuseDamagedStart(lines: readonly string[], start: number, layout: Fou
   const later = firstNumber(following[Math.min(5, following.length - 1)] ?? '', layout, row);
   const step = (later - first) / Math.min(5, following.length - 1);
   if (!(Math.abs(step) > 0)) return;
+  refuseDamagedFirstRow(lines, start, first, step, layout, row);
   let bad = -1;
   for (let i = start - 1; i >= Math.max(0, start - 40); i--) {
     const text = lines[i]!;
     if (!hasContent(text) || isSkipped(text, layout)) continue;
     readRow(text, layout, row);
-    if (!isDataRow(row, layout.columns)) {
+    if (!isDataRow(row, layout)) {
       bad = i;
       continue;
     }
@@ -111,7 +129,7 @@ function checkFooter(lines: readonly string[], from: number, layout: FoundLayout
     const text = lines[i]!;
     if (!hasContent(text) || isSkipped(text, layout)) continue;
     readRow(text, layout, row);
-    if (isDataRow(row, layout.columns) || !Number.isNaN(row.values[0]!) || count > 200) {
+    if (isDataRow(row, layout) || !Number.isNaN(row.values[0]!) || count > 200) {
       refuseRow(lines[from]!, from, layout, row);
     }
     count++;
@@ -146,6 +164,19 @@ function refuseSplitDecimals(
   );
 }
 
+/** Lines of numbers among the header lines, which are no part of the spectrum but must not vanish without a word. */
+function numbersAbove(lines: readonly string[], start: number, layout: FoundLayout, row: Row): Reason[] {
+  let count = 0;
+  for (let i = 0; i < start; i++) {
+    if (!hasContent(lines[i]!) || isSkipped(lines[i]!, layout)) continue;
+    readRow(lines[i]!, layout, row);
+    if (row.firstText < 0 && row.numbers > 0) count++;
+  }
+  if (count === 0) return [];
+  const text = `${counted(count, 'line')} of numbers above line ${start + 1} belong to the header and were left out.`;
+  return [{ code: 'numbers-in-header', text }];
+}
+
 /**
  * The block of numbers in a text: header lines of any number above it, comments and blank lines within it, text below.
  * @throws RefusedFile where there is none, or with the line number where a row is damaged
@@ -171,13 +202,13 @@ export function readNumberTable(lines: readonly string[]): NumberTable {
   const columns = Array.from({ length: layout.columns }, () => new Float64Array(most));
   const lineOfRow = new Int32Array(most);
   let count = 0;
-  let notes: Reason[] = [];
+  const notes = numbersAbove(lines, start, layout, row);
   for (let i = start; i < lines.length; i++) {
     const text = lines[i]!;
     readRow(text, layout, row);
-    if (!isDataRow(row, layout.columns) || (layout.delimiter !== blanks && row.numbers === 0)) {
+    if (!isDataRow(row, layout) || (layout.delimiter !== blanks && row.numbers === 0)) {
       if (!hasContent(text) || isSkipped(text, layout)) continue;
-      notes = checkFooter(lines, i, layout, row);
+      notes.push(...checkFooter(lines, i, layout, row));
       break;
     }
     for (let k = 0; k < layout.columns; k++) columns[k]![count] = row.values[k]!;

@@ -48,7 +48,8 @@ function shareOf(free: Uint8Array): number {
 }
 
 function intervalsFor(bins: Bins, distance: number): number {
-  return Math.max(2, Math.round((bins.count * bins.widthPerCm) / distance));
+  const wanted = Math.round((bins.count * bins.widthPerCm) / distance);
+  return Math.max(2, Math.min(wanted, Math.floor(bins.count / 8)));
 }
 
 /** Through the free points; where lines leave none for long, the curve keeps to the one before. */

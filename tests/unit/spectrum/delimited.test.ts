@@ -118,15 +118,23 @@ describe('delimited text', () => {
     expect(refusalOf([...rows, 'note', '2800.5,0.4'].join('\n')).line).toBe(201);
   });
 
-  it('reads 500,000 points in less than a second', () => {
+  it('reads 500,000 points in a few times what splitting the text takes', () => {
     const lines = Array.from(
       { length: 500_000 },
       (_, i) => `${(400 + i * 0.0072).toFixed(4)},${(0.1 + (i % 97) / 500).toFixed(5)}`,
     );
     const bytes = bytesOf(lines.join('\n'));
+    // A second takes this machine's plainest reading about three times, whatever else runs on it.
+    const plain = performance.now();
+    const numbers = new TextDecoder()
+      .decode(bytes)
+      .split('\n')
+      .map((line) => line.split(',').map(Number));
+    const yardstick = performance.now() - plain;
+    expect(numbers.length).toBe(500_000);
     const started = performance.now();
     const outcome = readSpectrumFile({ name: 'large.csv', bytes });
-    expect(performance.now() - started).toBeLessThan(2000);
+    expect(performance.now() - started).toBeLessThan(4 * yardstick + 200);
     expect(outcome.ok && outcome.spectra[0]!.wavenumberPerCm.length).toBe(500_000);
   });
 });
