@@ -40,6 +40,9 @@ function guessOfDips(data: OrdinateEvidence): Guess {
 function guessOfPeaks(data: OrdinateEvidence): Guess {
   const base = data.lowBase;
   const because = `lines point up from a base near ${short(base)}`;
+  if (base > 0.75 && base < 1.25 && data.greatest < 2.2) {
+    return { kind: 'transmittance', because: `${because}, as of a warm gas` };
+  }
   if (base > -2 && base < 3 && data.high < 10) return { kind: 'absorbance', because };
   if (base > 60 && base < 130 && data.high < 250) {
     return { kind: 'percent-transmittance', because: `${because}, as of a warm gas` };
