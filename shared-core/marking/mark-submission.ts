@@ -2,13 +2,22 @@ import type { PrescribedConstants } from '../reference/types.ts';
 import type { QuantityKey, Reason } from '../units/types.ts';
 import { askedOf, isotopologuesOf, valuesOf } from './asked.ts';
 import type { ChosenSet } from './compare.ts';
+import { isotopologue as isotopologueNamed } from '../molecule/isotopologue.ts';
+import { checkAcrossIsotopologues } from './invariants.ts';
 import { markValues } from './mark-values.ts';
 import { observationsOf } from './observations.ts';
 import { answerKey, type AnswerKey, type NamedReference } from './prescribe.ts';
 import { allFindings } from './slips/explain.ts';
 import { weighSubmission, type SubmissionVerdict } from './slips/weigh-submission.ts';
 import { ownLinesOf } from './student-lines.ts';
-import type { MarkedSubmission, MarkedValue, MarkingScheme, Submission } from './types.ts';
+import type {
+  MarkedSubmission,
+  MarkedValue,
+  MarkingScheme,
+  Observation,
+  Submission,
+  SubmittedValue,
+} from './types.ts';
 
 export interface MarkOptions {
   /** Step of each file's abscissa in cm-1, by file name: sets the reading error that is expected of a student. */
@@ -46,14 +55,21 @@ export function markInParts(
   const values = parts.flatMap((p) => p.values);
   const settled = values.filter((v) => v.points !== null);
   const source = parts.find((p) => p.key.source !== null)?.key.source ?? references[0] ?? null;
+  const findings = parts.map((p) => (p.verdict === null ? [] : allFindings(p.verdict, p.key.isotopologue)));
   const marked: MarkedSubmission = {
     submission,
     spectrum: source?.file ?? null,
     reference: source?.reference ?? null,
     prescribed: Object.fromEntries(parts.map((p) => [p.key.isotopologue, p.prescribed])),
     values,
-    slips: parts.flatMap((p) => (p.verdict === null ? [] : allFindings(p.verdict, p.key.isotopologue))),
-    observations: parts.flatMap((p) => observationsOf(p, submission, scheme)),
+    slips: findings.flat(),
+    observations: [
+      ...parts.flatMap((p, i) => {
+        const submitted = valuesOf(submission, p.key.isotopologue, isotopologues);
+        return observationsOf(p, submission, submitted, findings[i]!.length > 0, scheme);
+      }),
+      ...betweenIsotopologues(submission, isotopologues, scheme),
+    ],
     points: settled.length === 0 ? null : round(settled.reduce((sum, v) => sum + (v.points ?? 0), 0)),
     of: round(values.reduce((sum, v) => sum + v.of, 0)),
     open: values.length - settled.length,
@@ -95,6 +111,41 @@ function markIsotopologue(
           ownLines: ownLinesOf(submission, isotopologue, isotopologues),
         });
   return { key, values, chosen, prescribed: key.methods.map((m) => m.span.constants), verdict };
+}
+
+/** I7: the isotopologues of one submission against each other. */
+function betweenIsotopologues(
+  submission: Submission,
+  isotopologues: readonly string[],
+  scheme: MarkingScheme,
+): Observation[] {
+  const of = (name: string): SubmittedValue[] => valuesOf(submission, name, isotopologues);
+  return isotopologues.flatMap((a, i) =>
+    isotopologues
+      .slice(i + 1)
+      .filter((b) => sameMolecule(a, b))
+      .flatMap((b) =>
+        checkAcrossIsotopologues(of(a), of(b), scheme)
+          .filter((r) => !r.passed)
+          .map((r) => ({
+            code: 'isotopologues-disagree',
+            quantities: r.quantities,
+            text: `${a} and ${b}: ${r.text}`,
+            figures: {
+              low: r.interval[0],
+              high: r.interval[1],
+              expectedLow: r.expected[0],
+              expectedHigh: r.expected[1],
+            },
+          })),
+      ),
+  );
+}
+
+/** H and D of the same partner count as one molecule. */
+function sameMolecule(a: string, b: string): boolean {
+  const gas = (name: string): string => (isotopologueNamed(name)?.gas ?? name).replace(/^D/, 'H');
+  return gas(a) === gas(b);
 }
 
 /** The method that yields most of the values asked for, and under which they agree best. */

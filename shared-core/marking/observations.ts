@@ -3,7 +3,8 @@ import { copiedKeys, handbookCode, handbookProbability } from './slips/explain.t
 import { lineName } from './slips/line-table.ts';
 import { shown, symbols } from './slips/numbers.ts';
 import { handbookValues } from './slips/weigh-submission.ts';
-import type { MarkingScheme, Observation, Submission } from './types.ts';
+import { checkInvariants } from './invariants.ts';
+import type { MarkingScheme, Observation, Submission, SubmittedValue } from './types.ts';
 
 /** Advice that goes with every sign of copying. */
 export const copyingAdvice =
@@ -13,11 +14,14 @@ export const copyingAdvice =
 export function observationsOf(
   part: MarkedPart,
   submission: Submission,
+  submitted: readonly SubmittedValue[],
+  explained: boolean,
   scheme: MarkingScheme,
 ): Observation[] {
   return [
     ...handbook(part, scheme),
     ...oddLines(part),
+    ...ownNumbers(part, submitted, explained, scheme),
     ...figures(part, scheme),
     ...uncertainty(part, submission, scheme),
   ];
@@ -51,6 +55,38 @@ function handbook(part: MarkedPart, scheme: MarkingScheme): Observation[] {
       ]),
     },
   ];
+}
+
+/**
+ * Relations among the student's own numbers that fail: where there is no sound reference they are what a person can go by, elsewhere
+ * they are told where no slip explains the numbers.
+ */
+function ownNumbers(
+  part: MarkedPart,
+  submitted: readonly SubmittedValue[],
+  explained: boolean,
+  scheme: MarkingScheme,
+): Observation[] {
+  const { molecule, reliability } = part.key;
+  if (molecule === null || (reliability === 'sound' && explained)) return [];
+  return checkInvariants(submitted, molecule, scheme)
+    .filter((r) => !r.passed && !(r.id === 'I5' && withinScatterOfD(r.interval)))
+    .map((r) => ({
+      code: 'own-numbers-disagree',
+      quantities: r.quantities,
+      text: `${r.id}: ${r.text}`,
+      figures: {
+        low: r.interval[0],
+        high: r.interval[1],
+        expectedLow: r.expected[0],
+        expectedHigh: r.expected[1],
+      },
+    }));
+}
+
+/** A fitted D scatters by tens of per cent with the reading error: only a factor is worth telling. */
+function withinScatterOfD([low, high]: readonly [number, number]): boolean {
+  return low < 1.6 && high > 0.6;
 }
 
 /** Single lines of the table that stand away from where the file has them. */
