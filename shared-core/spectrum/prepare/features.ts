@@ -75,8 +75,12 @@ export function saturationLevel(
   return places >= 2 || longest >= 2 * runLength ? Math.max(floor, 0) : null;
 }
 
-/** Single points far off both neighbours, which agree with each other: no instrument line is that narrow. */
-export function findSpikes(t: Float64Array, noise: Float64Array): number[] {
+/**
+ * Single points far off both neighbours, which agree with each other: no instrument line is that narrow. Where lines
+ * are sampled by less than about three points a line on a grid point looks the same, so none are sought there.
+ */
+export function findSpikes(t: Float64Array, noise: Float64Array, pointsPerWidth: number | null): number[] {
+  if (pointsPerWidth !== null && pointsPerWidth < 3.2) return [];
   const spikes: number[] = [];
   for (let i = 2; i + 2 < t.length; i++) {
     const around = (t[i - 1]! + t[i + 1]!) / 2;

@@ -5,6 +5,7 @@ import { counted } from '../refusal.ts';
 import type { OrdinateKind, PreparedSpectrum, Spectrum } from '../types.ts';
 import { estimateBaseline, type Baseline } from './baseline.ts';
 import { findDips, findSpikes, resolutionOf, saturationLevel } from './features.ts';
+import { foreignGasNotes } from './foreign-gases.ts';
 import { estimateNoise, type NoiseEstimate } from './noise.ts';
 
 export interface PrepareOptions {
@@ -162,12 +163,13 @@ export function prepareSpectrum(
   }
   const residual = transmittance.map((value) => value - 1);
   const estimate: NoiseEstimate = estimateNoise(residual, baseline.free, roundingNoise(y, kind));
-  const spikes = findSpikes(transmittance, estimate.noise);
+  const resolutionPerCm = resolutionOf(findDips(x, transmittance, estimate.noise, 8));
+  const pointsPerWidth = resolutionPerCm === null ? null : resolutionPerCm / stepPerCm;
+  const spikes = findSpikes(transmittance, estimate.noise, pointsPerWidth);
   discountSpikes(transmittance, estimate.noise, spikes);
   const level = saturationLevel(transmittance, estimate.noise, estimate.correlationPoints);
   const { absorbance, limited } = absorbanceFrom(transmittance, estimate.noise);
   const saturation = level === null ? null : -Math.log10(Math.max(level + estimate.overall, 1e-6));
-  const dips = findDips(x, transmittance, estimate.noise, 8);
   return {
     spectrum,
     wavenumberPerCm: x,
@@ -177,9 +179,12 @@ export function prepareSpectrum(
     noise: estimate.noise,
     noiseCorrelationPoints: estimate.correlationPoints,
     stepPerCm,
-    resolutionPerCm: resolutionOf(dips),
+    resolutionPerCm,
     saturationAbsorbance: saturation,
     inverted,
-    notes: remarks(x, baseline, { limited, spikes, saturation, inverted }),
+    notes: [
+      ...remarks(x, baseline, { limited, spikes, saturation, inverted }),
+      ...foreignGasNotes(x, transmittance, estimate.noise, estimate.correlationPoints),
+    ],
   };
 }
