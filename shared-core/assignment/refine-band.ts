@@ -1,4 +1,4 @@
-import { lineWavenumberPerCm, relativeLineStrength } from '../molecule/index.ts';
+import { lineWavenumberPerCm } from '../molecule/index.ts';
 import type { BandConstants } from '../molecule/types.ts';
 import { nearest, type BandScore, type LineIndex } from './band-search.ts';
 import { fitBand, type BandLine } from './fit-band.ts';
@@ -81,7 +81,7 @@ function fitMatches(
   return jump > 3 ? null : { constants: fit.constants, rms };
 }
 
-/** Every m whose predicted line has a found one beside it; outward from the origin until three in a row are missing. */
+/** Every m whose predicted line has a found one beside it; outward from the origin until six in a row are missing. */
 function matchAll(
   index: LineIndex,
   constants: BandConstants,
@@ -92,11 +92,11 @@ function matchAll(
   const matches: { m: number; line: number }[] = [];
   for (const sign of [-1, 1]) {
     let missing = 0;
-    for (let j = 1; j <= most && missing < 4; j++) {
+    for (let j = 1; j <= most && missing < 6; j++) {
       const m = sign * j;
       const line = nearest(index, lineWavenumberPerCm(constants, m), tolerance);
       if (line < 0 || taken.has(line)) {
-        missing += relativeLineStrength(constants, m, 296) > 0 ? 1 : 0;
+        missing++;
         continue;
       }
       missing = 0;

@@ -22,6 +22,8 @@ export interface AssignedLine {
   /** False where left out of the fit, with the reason (outlier, blend, correction). */
   readonly used: boolean;
   readonly leftOutBecause: string | null;
+  /** True where a person accepted the line although it stands off: it is not left out again. */
+  readonly accepted?: boolean;
   /** observed - calculated, cm-1; null before a fit. */
   readonly residualPerCm: number | null;
 }

@@ -12,7 +12,7 @@ const sideLobeShare = 0.17;
 const sideLobeWidths = 6;
 
 /**
- * Lines of a prepared spectrum, before anybody says what they are: tops of the curvature of the smoothed depth 1 − T, at the scale
+ * Lines of a prepared spectrum, before anybody says what they are: tops of the curvature of the smoothed optical depth, at the scale
  * of the resolution, so that shoulders of half-resolved neighbours count too.
  *
  * Positions: parabola through the top of an isolated line's smoothed depth (for a flat, saturated one the middle of its flanks), through
@@ -25,12 +25,26 @@ export function findLines(prepared: PreparedSpectrum, options: FindLinesOptions 
   const width = prepared.resolutionPerCm;
   if (width === null) return [];
   const points = width / prepared.stepPerCm;
-  const depth = prepared.transmittance.map((t) => 1 - t);
-  const fine = smooth(depth, Math.max(0.8, 0.3 * points));
+  const { series, noise } = opticalDepth(prepared);
+  const fine = smooth(series, Math.max(0.8, 0.3 * points));
   const least = options.leastSignalToNoise ?? 5;
-  const tops = findTops(prepared, fine, least);
-  const kept = dropSideLobes(prepared, tops, width);
-  return kept.map((top, k) => describe(prepared, fine, top, kept[k - 1], kept[k + 1], width));
+  const tops = findTops(prepared, noise, fine, least);
+  const kept = dropSideLobes(prepared, onePerLine(prepared, fine, tops, width), width);
+  return kept.map((top, k) => describe(prepared, noise, fine, top, kept[k - 1], kept[k + 1], width));
+}
+
+/**
+ * Optical depth −ln T, followed only as far as light is left (five σ), with its noise σ/T. A strong line keeps its top in it, where the
+ * depth of the transmittance would be flat.
+ */
+function opticalDepth(prepared: PreparedSpectrum): { series: Float64Array; noise: Float64Array } {
+  const noise = new Float64Array(prepared.noise.length);
+  const series = prepared.transmittance.map((t, i) => {
+    const light = Math.max(t, 5 * prepared.noise[i]!);
+    noise[i] = prepared.noise[i]! / light;
+    return -Math.log(light);
+  });
+  return { series, noise };
 }
 
 interface Top {
@@ -39,7 +53,12 @@ interface Top {
   readonly signalToNoise: number;
 }
 
-function findTops(prepared: PreparedSpectrum, fine: Smoothed, least: number): Top[] {
+function findTops(
+  prepared: PreparedSpectrum,
+  noiseOfSeries: Float64Array,
+  fine: Smoothed,
+  least: number,
+): Top[] {
   const { value, curvature } = fine;
   // Correlated noise is not smoothed away as independent noise is.
   const correlation = Math.sqrt(Math.max(1, prepared.noiseCorrelationPoints));
@@ -47,13 +66,30 @@ function findTops(prepared: PreparedSpectrum, fine: Smoothed, least: number): To
   for (let i = 2; i < value.length - 2; i++) {
     const c = curvature[i]!;
     if (c <= 0 || c < curvature[i - 1]! || c <= curvature[i + 1]!) continue;
-    const noise = prepared.noise[i]!;
+    const noise = noiseOfSeries[i]!;
     const byValue = value[i]! / (noise * Math.min(1, fine.valueGain * correlation));
     const byCurvature = c / (noise * fine.curvatureGain * correlation);
     if (byValue < least || byCurvature < Math.max(3.5, least - 1)) continue;
     tops.push({ index: i, depth: value[i]!, signalToNoise: byValue });
   }
   return tops;
+}
+
+/** Two tops of the curvature without a dip between them are the shoulders of one black line: the deeper one stays. */
+function onePerLine(prepared: PreparedSpectrum, fine: Smoothed, tops: readonly Top[], width: number): Top[] {
+  const x = prepared.wavenumberPerCm;
+  return tops.reduce<Top[]>((kept, top) => {
+    const last = kept.at(-1);
+    if (last === undefined || x[top.index]! - x[last.index]! > 0.8 * width) return [...kept, top];
+    let dip = Infinity;
+    for (let i = last.index; i <= top.index; i++) dip = Math.min(dip, fine.curvature[i]!);
+    const apart =
+      dip < 0.5 * Math.min(fine.curvature[last.index]!, fine.curvature[top.index]!) &&
+      last.depth < 2 &&
+      top.depth < 2;
+    if (apart) return [...kept, top];
+    return top.depth > last.depth ? [...kept.slice(0, -1), top] : kept;
+  }, []);
 }
 
 /** Side lobes of an unweighted interferogram stand beside strong lines only; a weak line near a strong one is lost with them. */
@@ -74,6 +110,7 @@ function dropSideLobes(prepared: PreparedSpectrum, tops: readonly Top[], width: 
 
 function describe(
   prepared: PreparedSpectrum,
+  noiseOfSeries: Float64Array,
   fine: Smoothed,
   top: Top,
   before: Top | undefined,
@@ -85,13 +122,17 @@ function describe(
   const apart = (other: Top | undefined): number =>
     other === undefined ? Infinity : Math.abs(x[other.index]! - x[i]!);
   const blended = Math.min(apart(before), apart(after)) < 2.2 * width;
-  const flat = top.depth > 0.9;
+  // No light left at the top: only the flanks tell where the middle is.
+  const flat =
+    prepared.transmittance[i]! < 6 * prepared.noise[i]! ||
+    (prepared.saturationAbsorbance !== null &&
+      prepared.absorbance[i]! > 0.93 * prepared.saturationAbsorbance);
   const ceiling = prepared.saturationAbsorbance;
   const peak = Math.max(...prepared.absorbance.subarray(Math.max(0, i - 1), i + 2));
   const [position, fullWidth] = flat
-    ? flanks(x, fine.value, i, 0.55 * top.depth)
+    ? flanks(x, fine.value, i, 0.85 * top.depth)
     : [vertex(x, blended ? fine.curvature : fine.value, i), flanks(x, fine.value, i, 0.5 * top.depth)[1]];
-  const signalToNoise = top.depth / prepared.noise[i]!;
+  const signalToNoise = top.depth / noiseOfSeries[i]!;
   const correlation = Math.sqrt(Math.max(1, prepared.noiseCorrelationPoints));
   const w = Math.min(Math.max(fullWidth, 0.7 * width), 4 * width);
   const random = (0.7 * Math.sqrt(prepared.stepPerCm * w) * correlation) / signalToNoise;
@@ -103,7 +144,7 @@ function describe(
     integratedAbsorbance: Math.max(peak, 1e-6) * w * 1.1,
     fullWidthHalfHeightPerCm: w,
     signalToNoise,
-    saturated: flat || (ceiling !== null && peak > 0.9 * ceiling),
+    saturated: flat || peak > 1 || (ceiling !== null && peak > 0.9 * ceiling),
     blended,
   };
 }

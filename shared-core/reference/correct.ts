@@ -28,7 +28,7 @@ export function correctLines(
         return change(current, c.lineId, { used: false, leftOutBecause: 'left out by the instructor' });
       case 'line-in':
       case 'outlier-accepted':
-        return change(current, c.lineId, { used: true, leftOutBecause: null });
+        return change(current, c.lineId, { used: true, leftOutBecause: null, accepted: true });
       case 'line-moved':
         return change(current, c.lineId, { wavenumberPerCm: c.wavenumberPerCm });
       default:
