@@ -65,10 +65,18 @@ function fitLine(indices: Int32Array, x: Float64Array): { first: number; step: n
   return { first: x[0]! + meanX - step * meanIndex, step };
 }
 
-function largestDeviation(indices: Int32Array, x: Float64Array, first: number, step: number): number {
+/** Largest deviation from the grid; stops at the first that exceeds `limit`. */
+function largestDeviation(
+  indices: Int32Array,
+  x: Float64Array,
+  first: number,
+  step: number,
+  limit: number,
+): number {
   let largest = 0;
-  for (let i = 0; i < x.length; i++) {
-    largest = Math.max(largest, Math.abs(x[i]! - first - step * indices[i]!));
+  for (let i = 0; i < x.length && largest <= limit; i++) {
+    const deviation = Math.abs(x[i]! - first - step * indices[i]!);
+    if (deviation > largest) largest = deviation;
   }
   return largest;
 }
@@ -83,7 +91,7 @@ function roundest(grid: EvenGrid, x: Float64Array, allowed: number): EvenGrid {
     const middle = grid.first + ((grid.step - step) * span) / 2;
     for (let more = 0; more <= 4; more++) {
       const first = Math.round(middle * 10 ** more) / 10 ** more;
-      const deviation = largestDeviation(grid.indices, x, first, step);
+      const deviation = largestDeviation(grid.indices, x, first, step, allowed);
       if (deviation <= allowed) return { ...grid, first, step, largestDeviation: deviation };
     }
   }
@@ -106,8 +114,8 @@ export function findEvenGrid(x: Float64Array, unit: number): EvenGrid | null {
     indices[i] = indices[i - 1]! + steps;
   }
   const { first, step } = fitLine(indices, x);
-  const deviation = largestDeviation(indices, x, first, step);
   const slack = 1e-9 * Math.abs(x[n - 1]!);
+  const deviation = largestDeviation(indices, x, first, step, 0.6 * unit + slack);
   if (deviation > 0.6 * unit + slack) return null;
   const fitted = { first, step, indices, largestDeviation: deviation };
   return roundest(fitted, x, 0.5 * unit + slack);

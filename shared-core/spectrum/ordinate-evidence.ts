@@ -113,7 +113,7 @@ function looksLikeInterferogram(y: Float64Array, middle: number): boolean {
 }
 
 export function ordinateEvidence(y: Float64Array): OrdinateEvidence {
-  const sorted = sampled(y, 20_000);
+  const sorted = sampled(y, 5000);
   const quantile = (share: number): number => sorted[Math.floor(share * (sorted.length - 1))]!;
   let least = Infinity;
   let greatest = -Infinity;

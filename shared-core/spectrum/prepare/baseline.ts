@@ -71,7 +71,9 @@ function sampledQuantile(values: Float64Array, share: number): number {
 
 /** Points less than 2.5 times the median depth below the curve: all of a wave whose crests the curve rides on. */
 function generousFree(depth: Float64Array): Uint8Array {
-  const sizes = depth.map(Math.abs);
+  const stride = Math.max(1, Math.floor(depth.length / 4000));
+  const sizes = new Float64Array(Math.ceil(depth.length / stride));
+  for (let i = 0; i < sizes.length; i++) sizes[i] = Math.abs(depth[i * stride]!);
   const limit = 2.5 * selectRank(sizes, sizes.length, sizes.length >> 1);
   return Uint8Array.from(depth, (each) => (Math.abs(each) < limit ? 1 : 0));
 }

@@ -106,6 +106,8 @@ function strongestFrequency(
     }
   }
   let frequency = best / n;
+  // Between two frequencies of the transform a wave keeps 0.4 of its power at the least.
+  if (fitWave(values, weights, frequency).explained < 0.1) return frequency;
   for (let width = 0.5 / n; width > 0.02 / n; width /= 2) {
     const [below, above] = [frequency - width, frequency + width];
     const here = fitWave(values, weights, frequency).explained;

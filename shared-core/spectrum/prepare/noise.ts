@@ -54,7 +54,7 @@ function decorrelationLag(residual: Float64Array, free: Uint8Array, scratch: Flo
   const deviations: number[] = [];
   for (const lag of lags) {
     const { deviation, count } = lagDeviation(residual, free, lag, 0, n, scratch);
-    if (count < 60) break;
+    if (count < 24) break;
     deviations.push(deviation);
     const k = deviations.length - 1;
     if (
@@ -183,17 +183,38 @@ function interpolated(logs: readonly number[], n: number): Float64Array {
 }
 
 /**
+ * Nothing is free of lines: what neighbours differ by in the calmest stretch, lines included, stands for the noise; it
+ * is rather too much than too little.
+ */
+function withoutFreePoints(residual: Float64Array, least: number, scratch: Float64Array): NoiseEstimate {
+  const n = residual.length;
+  const all = new Uint8Array(n).fill(1);
+  const stretches = Math.max(1, Math.min(24, Math.floor(n / 16)));
+  let overall = Infinity;
+  for (let k = 0; k < stretches; k++) {
+    const [from, to] = [Math.floor((k * n) / stretches), Math.floor(((k + 1) * n) / stretches)];
+    overall = Math.min(overall, lagDeviation(residual, all, 1, from, to, scratch).deviation);
+  }
+  overall = Math.max(overall, least);
+  return { noise: new Float64Array(n).fill(overall), overall, correlationPoints: 1 };
+}
+
+/**
  * Noise along a residual from the points that `free` marks (no lines), from second differences at a lag beyond the
  * correlation; never below `least` (the rounding of the file).
  */
 export function estimateNoise(residual: Float64Array, free: Uint8Array, least: number): NoiseEstimate {
   const scratch = new Float64Array(Math.min(residual.length, 20_000));
   const segments = segmentsOf(free);
+  const freeShare = segments.reduce((sum, segment) => sum + segment.freeShare, 0) / segments.length;
+  if (freeShare < 0.05) return withoutFreePoints(residual, least, scratch);
   const found = quietPoints(residual, free, segments, scratch);
   // Where lines are so dense that no stretch is free, the free points of the whole range have to do.
   const quiet = found.segments.size > 0 ? found : { points: free, segments: new Set(segments) };
   const lag = decorrelationLag(residual, quiet.points, scratch);
-  const calm = lagDeviation(residual, quiet.points, lag, 0, residual.length, scratch).deviation;
+  const measured = lagDeviation(residual, quiet.points, lag, 0, residual.length, scratch);
+  if (measured.count < 30) return withoutFreePoints(residual, least, scratch);
+  const calm = measured.deviation;
   if (calm <= least) {
     return { noise: new Float64Array(residual.length).fill(least), overall: least, correlationPoints: 1 };
   }

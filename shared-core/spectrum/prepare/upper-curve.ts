@@ -46,7 +46,14 @@ export function upperCurve(
   let curve = fitSmoothSpline(means, weights, intervals, stiffness);
   for (let round = 0; round < 12; round++) {
     depthsBelow(curve, means, depths);
-    for (let i = 0; i < n; i++) if (counts[i]! > 0) weights[i] = depths[i]! < 0 ? 1 : 0.02;
+    let changed = 0;
+    for (let i = 0; i < n; i++) {
+      const weight = depths[i]! < 0 ? 1 : 0.02;
+      if (counts[i] === 0 || weight === weights[i]) continue;
+      weights[i] = weight;
+      changed++;
+    }
+    if (round > 1 && changed < 0.002 * n) break;
     curve = fitSmoothSpline(means, weights, intervals, stiffness);
   }
   let scatter = 0;
