@@ -162,7 +162,9 @@ export function otherHydrogen(molecule: Isotopologue): string | null {
 function whyNone(isotopologue: string, references: readonly NamedReference[]): string {
   if (references.length === 0) return 'No spectrum was matched to this submission.';
   const files = references.map((r) => r.file).join(', ');
-  const reasons = references.flatMap(({ reference }) => reference.reasons.map((r) => r.text));
+  const reasons = references.flatMap(({ reference }) =>
+    [...(reference.isotopologueReasons[isotopologue] ?? []), ...reference.reasons].map((r) => r.text),
+  );
   const shown = references.some(({ reference }) => reference.isotopologues[isotopologue] !== undefined);
   if (shown) return reasons[0] ?? `The reference for ${isotopologue} from ${files} is not reliable.`;
   const others = references.flatMap(({ reference }) => Object.keys(reference.isotopologues));

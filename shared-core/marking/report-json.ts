@@ -71,7 +71,9 @@ function referenceJson(marked: MarkedSubmission): Json {
   return {
     reliability:
       (main === null ? undefined : reference.isotopologueReliability[main]) ?? reference.reliability,
-    reasons: reference.reasons.map(({ code, text }) => ({ code, text })),
+    reasons: ((main === null ? undefined : reference.isotopologueReasons[main]) ?? reference.reasons).map(
+      ({ code, text }) => ({ code, text }),
+    ),
     axisScalePpm: reference.axisScalePpm,
     ordinate: reference.ordinate,
     isotopologue: main,

@@ -55,12 +55,10 @@ function findingsOf(verdict: Verdict, isotopologue: string, fromOwnLines: boolea
 
 /** Findings from the table of lines (the first place where things go wrong) before those from the values. */
 export function allFindings(verdict: SubmissionVerdict, isotopologue: string): SlipFinding[] {
-  const fromValues = findingsOf(verdict.values, isotopologue, verdict.lines !== null);
+  const fromValues = findingsOf(verdict.values, isotopologue, verdict.fromOwnLines);
   const fromLines = verdict.lines?.findings ?? [];
   const codes = new Set(fromLines.map((f) => f.code));
-  return [...fromLines, ...fromValues.filter((f) => !codes.has(f.code))].sort(
-    (a, b) => b.probability - a.probability,
-  );
+  return [...fromLines, ...fromValues.filter((f) => !codes.has(f.code))];
 }
 
 /** Probability that a value was taken from a handbook. */

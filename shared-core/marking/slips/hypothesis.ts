@@ -134,14 +134,18 @@ export function mostWeight(bench: Bench, values: Values, hypothesis: Hypothesis)
   let most = -Infinity;
   for (const { logPrior, deviations, logPeak } of bench.levels) {
     let worst = 0;
+    let sharper = 0;
     for (let i = 0; i < bench.fields.length; i++) {
       const f = bench.fields[i]!;
       const predicted = values[f.key];
       if (predicted === undefined) continue;
-      const scale = Math.max(1, Math.abs(predicted / bench.correct.values[f.key]!));
-      worst = Math.max(worst, Math.abs(f.value - predicted) / (deviations[i]! * scale));
+      // A value at another scale scatters at that scale, down to its last digit.
+      const ratio = Math.abs(predicted / bench.correct.values[f.key]!);
+      const deviation = Math.max(deviations[i]! * ratio, f.halfWidth / 2);
+      worst = Math.max(worst, Math.abs(f.value - predicted) / deviation);
+      sharper += Math.log(deviations[i]! / deviation);
     }
-    most = Math.max(most, logPrior + logPeak - 0.5 * worst * worst);
+    most = Math.max(most, logPrior + logPeak + sharper - 0.5 * worst * worst);
   }
   return hypothesis.logPrior + most;
 }

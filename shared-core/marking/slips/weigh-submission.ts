@@ -11,7 +11,7 @@ import { otherHeavyOf } from '../published-lines.ts';
 import type { MarkingScheme, SubmittedValue } from '../types.ts';
 import { slipCatalogue } from './catalogue.ts';
 import type { SlipSurroundings, SlipVariant } from './definition.ts';
-import { fieldsOf } from './fields.ts';
+import { fieldsOf, type Field } from './fields.ts';
 import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
 import { lineTableVerdict, type LineTableVerdict } from './line-table.ts';
 import { readingOf, representativeSets, setsByNumber, type Reading } from './reading.ts';
@@ -35,9 +35,16 @@ export interface WeighOptions {
 export interface SubmissionVerdict {
   readonly values: Verdict;
   readonly lines: LineTableVerdict | null;
+  /** True where the values were weighed as coming from the lines handed in. */
+  readonly fromOwnLines: boolean;
 }
 
-/** Weighs all slips against the values of one isotopologue; null where there is nothing to weigh. */
+/**
+ * Weighs all slips against the values of one isotopologue; null where there is nothing to weigh.
+ *
+ * With a table of lines the chain starts from the student's own lines; where the values do not follow from them (a table that was not
+ * the one fitted) it starts from the file's lines, whichever explains the values better.
+ */
 export function weighSubmission(
   key: AnswerKey,
   submitted: readonly SubmittedValue[],
@@ -46,12 +53,51 @@ export function weighSubmission(
   options: WeighOptions,
 ): SubmissionVerdict | null {
   const { molecule } = key;
-  if (molecule === null || options.sets.length === 0) return null;
   const fields = fieldsOf(submitted);
-  const sets =
-    options.ownLines === null ? options.sets : [{ label: 'the lines handed in', lines: options.ownLines }];
-  const correctReading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
-  if (fields.length === 0 || correctReading === null) return null;
+  if (molecule === null || options.sets.length === 0 || fields.length === 0) return null;
+  const surroundings = surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)); // prettier-ignore
+  const from = (sets: readonly LineSet[], errors: readonly ReadingError[]): Verdict | null =>
+    weighFrom(sets, errors, fields, key, molecule, scheme, options, surroundings);
+  const { ownLines } = options;
+  if (ownLines === null) {
+    const values = from(options.sets, readingErrors(scheme, options));
+    return values === null ? null : { values, lines: null, fromOwnLines: false };
+  }
+  const lines = lineTableVerdict(ownLines, key.candidates, surroundings, key.isotopologue);
+  const own = from([{ label: 'the lines handed in', lines: ownLines }], tableErrors);
+  if (own !== null && explainsAll(own)) return { values: own, lines, fromOwnLines: true };
+  const file = from(options.sets, readingErrors(scheme, options));
+  const ownIsBetter = own !== null && (file === null || topWeight(own) >= topWeight(file));
+  const values = ownIsBetter ? own : file;
+  return values === null ? null : { values, lines, fromOwnLines: ownIsBetter };
+}
+
+function explainsAll({ accounts }: Verdict): boolean {
+  const top = accounts[0];
+  return (
+    top !== undefined &&
+    top.unexplained.length === 0 &&
+    top.hypothesis.free.size === 0 &&
+    top.hypothesis.errors[0]!.perCm < 1
+  );
+}
+
+function topWeight({ accounts }: Verdict): number {
+  return accounts[0]?.logWeight ?? -Infinity;
+}
+
+function weighFrom(
+  sets: readonly LineSet[],
+  errors: readonly ReadingError[],
+  fields: readonly Field[],
+  key: AnswerKey,
+  molecule: Isotopologue,
+  scheme: MarkingScheme,
+  options: WeighOptions,
+  surroundings: SlipSurroundings,
+): Verdict | null {
+  const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
+  if (reading === null) return null;
   const groups = setsByNumber(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
   const replayed = (variant: SlipVariant, group: number): Reading | null => {
@@ -59,35 +105,29 @@ export function weighSubmission(
     known.set(variant, readings);
     const before = readings.get(group);
     if (before !== undefined) return before;
-    const reading = readingOf(
-      groups[group] ?? [],
-      options.method,
-      scheme,
-      molecule,
-      key.extra,
-      variant.replay,
-    );
-    readings.set(group, reading);
-    return reading;
+    const fresh = readingOf(groups[group] ?? [], options.method, scheme, molecule, key.extra, variant.replay);
+    readings.set(group, fresh);
+    return fresh;
   };
-  const surroundings = surroundingsOf(key, molecule, references, scheme, options, fields.map((f) => f.key)); // prettier-ignore
-  const values = weighSlips({
+  return weighSlips({
     fields,
-    reading: correctReading,
+    reading,
     ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
     groups: groups.length,
     replayed,
-    errors: readingErrors(scheme, options),
+    errors,
     surroundings,
     steps: options.originByMidpoint ? { ...standardSteps, nu0: midpointOrigin } : standardSteps,
     handbook: handbookValues(molecule, scheme),
   });
-  if (values === null) return null;
-  const { ownLines } = options;
-  const lines =
-    ownLines === null ? null : lineTableVerdict(ownLines, key.candidates, surroundings, key.isotopologue);
-  return { values, lines };
 }
+
+/** What is left of reading where the lines themselves were handed in: their rounding, or a fit to slightly other numbers. */
+const tableErrors: readonly ReadingError[] = [
+  { perCm: 1e-3, prior: 0.65 },
+  { perCm: 1e-2, prior: 0.25 },
+  { perCm: 0.1, prior: 0.1 },
+];
 
 /** ν̃0 by the midpoint lies αe below the fitted one. */
 const midpointOrigin: Step = (_, { read }) =>
@@ -97,7 +137,6 @@ const midpointOrigin: Step = (_, { read }) =>
 
 /** The scheme's reading error; else about a third of the abscissa step; else the whole range from peak fit to ruler. */
 function readingErrors(scheme: MarkingScheme, options: WeighOptions): readonly ReadingError[] {
-  if (options.ownLines !== null) return [{ perCm: 1e-3, prior: 0.65 }, { perCm: 1e-2, prior: 0.25 }, { perCm: 0.1, prior: 0.1 }]; // prettier-ignore
   if (scheme.readingErrorPerCm !== null) return readingErrorsAbout(scheme.readingErrorPerCm);
   return options.stepPerCm === null ? unknownReadingErrors : readingErrorsAbout(options.stepPerCm / 3);
 }
