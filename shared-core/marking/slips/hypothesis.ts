@@ -141,7 +141,9 @@ export function mostWeight(bench: Bench, values: Values, hypothesis: Hypothesis)
       if (predicted === undefined) continue;
       // A value at another scale scatters at that scale, down to its last digit.
       const ratio = Math.abs(predicted / bench.correct.values[f.key]!);
-      const deviation = Math.max(deviations[i]! * ratio, f.halfWidth / 2);
+      const rounding = Math.sqrt(f.roundingVariance);
+      const model = Math.sqrt(Math.max(deviations[i]! ** 2 - f.roundingVariance, 0));
+      const deviation = Math.hypot(model * ratio, rounding);
       worst = Math.max(worst, Math.abs(f.value - predicted) / deviation);
       sharper += Math.log(deviations[i]! / deviation);
     }

@@ -37,7 +37,6 @@ const correct = {
 };
 const keys = ['nu0', 'B0', 'B1', 'Be', 'alphaE', 'D', 're', 'r0', 'k'] as const;
 const { B0, B1, Be, alphaE, D, re, r0, k, nu0 } = correct;
-const mean = (B0 + B1) / 2;
 const length = (b: number): number => re * Math.sqrt(Be / b);
 const strength = (wavenumber: number): number => k * (wavenumber / nu0) ** 2;
 
