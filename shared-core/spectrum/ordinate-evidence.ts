@@ -14,6 +14,9 @@ export interface OrdinateEvidence {
   /** Where sharp features point: 'none' where neither side stands out. */
   readonly direction: 'up' | 'down' | 'none';
   readonly looksLikeInterferogram: boolean;
+  /** Upper edge over sixteen stretches of the range: its highest place, and that over its lowest (null: not above 0). */
+  readonly edgeHeight: number;
+  readonly edgeRatio: number | null;
 }
 
 function sampled(y: Float64Array, most: number): Float64Array {
@@ -112,6 +115,22 @@ function looksLikeInterferogram(y: Float64Array, middle: number): boolean {
   return swings >= 5;
 }
 
+/** Second largest value of each of sixteen stretches. */
+function upperEdge(y: Float64Array): Pick<OrdinateEvidence, 'edgeHeight' | 'edgeRatio'> {
+  const heights = Array.from({ length: 16 }, (_, k) => {
+    let [greatest, second] = [-Infinity, -Infinity];
+    for (let i = Math.floor((k * y.length) / 16); i < Math.floor(((k + 1) * y.length) / 16); i++) {
+      const value = y[i]!;
+      if (value > greatest) [greatest, second] = [value, greatest];
+      else if (value > second) second = value;
+    }
+    return Number.isFinite(second) ? second : greatest;
+  }).filter(Number.isFinite);
+  const least = Math.min(...heights);
+  const edgeHeight = Math.max(...heights);
+  return { edgeHeight, edgeRatio: least > 0 ? edgeHeight / least : null };
+}
+
 export function ordinateEvidence(y: Float64Array): OrdinateEvidence {
   const sorted = sampled(y, 5000);
   const quantile = (share: number): number => sorted[Math.floor(share * (sorted.length - 1))]!;
@@ -131,5 +150,6 @@ export function ordinateEvidence(y: Float64Array): OrdinateEvidence {
     greatest,
     direction: directionOf(y),
     looksLikeInterferogram: looksLikeInterferogram(y, quantile(0.5)),
+    ...upperEdge(y),
   };
 }

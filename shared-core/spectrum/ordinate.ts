@@ -26,13 +26,33 @@ function short(value: number): string {
   return String(Number(value.toPrecision(3)));
 }
 
+/**
+ * A base that swings like the output of a lamp and detector: by more than a factor of three, or by half without
+ * coming near full transmittance anywhere (`full`: 1 or 100).
+ */
+function looksLikeSingleBeam(data: OrdinateEvidence, full: number): boolean {
+  const { edgeRatio, edgeHeight } = data;
+  if (edgeRatio === null || edgeRatio > 3) return true;
+  const reachesFull = edgeHeight > 0.75 * full && edgeHeight < 1.6 * full;
+  return !reachesFull && edgeRatio > (full === 1 ? 1.9 : 1.5);
+}
+
+function singleBeam(data: OrdinateEvidence): Guess {
+  const because = `the base swings up to ${short(data.edgeHeight)} ${data.edgeRatio === null ? 'and down to nothing' : `by a factor of ${short(data.edgeRatio)}`}, as in a single-beam spectrum`;
+  return { kind: 'unusable', because };
+}
+
 /** A base and lines below it: transmittance, percent, or absorbance turned over. */
 function guessOfDips(data: OrdinateEvidence): Guess {
   const base = data.highBase;
   const because = `lines point down from a base near ${short(base)}`;
   if (Math.abs(base) < 0.25 || (base < 0.7 && data.low < -0.15)) return { kind: 'absorbance', because };
-  if (base > 0.15 && base < 1.6 && data.least > -0.5) return { kind: 'transmittance', because };
-  if (base > 15 && base < 160 && data.least > -30) return { kind: 'percent-transmittance', because };
+  if (base > 0.15 && base < 1.6 && data.least > -0.5) {
+    return looksLikeSingleBeam(data, 1) ? singleBeam(data) : { kind: 'transmittance', because };
+  }
+  if (base > 15 && base < 160 && data.least > -30) {
+    return looksLikeSingleBeam(data, 100) ? singleBeam(data) : { kind: 'percent-transmittance', because };
+  }
   return { kind: 'unusable', because: `${because}, as in a single-beam spectrum or in arbitrary units` };
 }
 

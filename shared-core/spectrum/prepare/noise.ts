@@ -193,7 +193,7 @@ function withoutFreePoints(residual: Float64Array, least: number, scratch: Float
   let overall = Infinity;
   for (let k = 0; k < stretches; k++) {
     const [from, to] = [Math.floor((k * n) / stretches), Math.floor(((k + 1) * n) / stretches)];
-    overall = Math.min(overall, lagDeviation(residual, all, 1, from, to, scratch).deviation);
+    overall = Math.min(overall, lagDeviation(residual, all, 2, from, to, scratch).deviation);
   }
   overall = Math.max(overall, least);
   return { noise: new Float64Array(n).fill(overall), overall, correlationPoints: 1 };
