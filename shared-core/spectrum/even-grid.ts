@@ -82,11 +82,13 @@ function largestDeviation(
 }
 
 /** The grid with the roundest numbers that still explains every value, else the fitted one. */
-function roundest(grid: EvenGrid, x: Float64Array, allowed: number): EvenGrid {
+function roundest(grid: EvenGrid, x: Float64Array, allowed: number, unit: number): EvenGrid {
+  // Standard error of a step fitted to n values rounded to a unit: unit n^-3/2. A rounder step must stay near it.
+  const near = (2 * unit) / x.length ** 1.5;
   for (let decimals = 1; decimals <= 9; decimals++) {
     const scale = 10 ** decimals;
     const step = Math.round(grid.step * scale) / scale;
-    if (step === 0) continue;
+    if (Math.abs(step - grid.step) > near + 1e-12 * grid.step) continue;
     const span = grid.indices.at(-1)! - grid.indices[0]!;
     const middle = grid.first + ((grid.step - step) * span) / 2;
     for (let more = 0; more <= 4; more++) {
@@ -118,7 +120,7 @@ export function findEvenGrid(x: Float64Array, unit: number): EvenGrid | null {
   const deviation = largestDeviation(indices, x, first, step, 0.6 * unit + slack);
   if (deviation > 0.6 * unit + slack) return null;
   const fitted = { first, step, indices, largestDeviation: deviation };
-  return roundest(fitted, x, 0.5 * unit + slack);
+  return roundest(fitted, x, 0.5 * unit + slack, unit);
 }
 
 /** Whether the steps of ascending values differ by more than a thousandth of a step: a sign of rounding or unevenness. */
