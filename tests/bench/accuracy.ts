@@ -19,7 +19,7 @@ export async function benchAccuracy(count: number, only: string | null, workers:
   for (const [caseIndex, each] of accuracyCases.entries()) {
     if (only !== null && !each.name.includes(only)) continue;
     const tasks = Array.from({ length: count }, (_, i): AccuracyTask => ({ caseIndex, seed: 1000 + i }));
-    const records = await spread<AccuracyTask, AccuracyRecord>(measurement, tasks, workers);
+    const records = await spread<AccuracyRecord>(measurement, tasks, workers);
     records.forEach((record, i) => {
       if (record.ratios && !record.wrong) return;
       const what = record.ratios

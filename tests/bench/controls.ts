@@ -6,6 +6,8 @@ export interface ControlSpectrum {
   readonly name: string;
   readonly wavenumberPerCm: Float64Array;
   readonly transmittance: Float64Array;
+  /** First line of the file; says transmittance where absent. */
+  readonly header?: string;
 }
 
 const base = (seed: number): SimulationOptions => ({
@@ -32,6 +34,23 @@ function comb(name: string, seed: number, places: readonly number[], depth = 0.3
       1e-3 * random.normal(),
   );
   return { name, wavenumberPerCm, transmittance };
+}
+
+/** What the detector sees without a background to divide by: the hump of source and beam splitter, with everything in it. */
+function singleBeam(name: string, seed: number, header: string): ControlSpectrum {
+  const cell = simulated(name, {
+    ...base(seed),
+    fromPerCm: 500,
+    toPerCm: 5000,
+    zeroFilling: 1,
+    foreign: { water: 0.3, carbonDioxide: 0.5 },
+  });
+  const hump = (x: number): number => 14.2 * ((x - 380) / 900) ** 2 * Math.exp(-(x - 380) / 620);
+  return {
+    ...cell,
+    header,
+    transmittance: cell.transmittance.map((t, i) => t * hump(cell.wavenumberPerCm[i]!)),
+  };
 }
 
 /** The negative controls: none of them may come out sound. */
@@ -82,13 +101,8 @@ export function negativeControls(seed: number): readonly ControlSpectrum[] {
       wavenumberPerCm: x,
       transmittance: x.map(() => Math.max(1e-3, 0.5 + 0.2 * random.normal())),
     },
-    {
-      name: 'single beam',
-      wavenumberPerCm: x,
-      transmittance: good.transmittance.map(
-        (t, i) => 38.2 * t * Math.exp(-(((x[i]! - 2800) / 700) ** 2)) * (1 + 0.3 * Math.sin(x[i]! / 90)),
-      ),
-    },
+    singleBeam('single beam, labelled', seed, 'wavenumber (cm-1),single beam'),
+    singleBeam('single beam, no label', seed, 'wavenumber (cm-1),intensity'),
     {
       name: 'interferogram',
       wavenumberPerCm: Float64Array.from({ length: 4096 }, (_, i) => i),
@@ -141,7 +155,7 @@ export function injectedCauses(seed: number): readonly InjectedCause[] {
     {
       name: 'too noisy',
       expected: /noise|precision|weak|faint|few/,
-      options: { ...gas({ peakAbsorbance: 0.6 }), noise: 0.03 },
+      options: { ...gas({ peakAbsorbance: 0.6 }), noise: 0.06 },
     },
     {
       name: 'too faint',

@@ -6,7 +6,7 @@ import { spread } from './spread.ts';
 export async function benchEnvelope(count: number, workers: number, firstSeed = 50_000): Promise<void> {
   const measurement = { module: new URL('./robust-cases.ts', import.meta.url).href, name: 'measureEnvelope' };
   const seeds = Array.from({ length: count }, (_, i) => firstSeed + i);
-  const records = await spread<number, EnvelopeRecord>(measurement, seeds, workers);
+  const records = await spread<EnvelopeRecord>(measurement, seeds, workers);
   for (const record of records) {
     for (const sentence of record.falsehoods) {
       console.error(`envelope seed ${record.seed}: SOUND AND WRONG ${sentence}; ${record.description}`);

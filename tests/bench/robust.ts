@@ -18,7 +18,8 @@ export function benchControls(count: number): void {
   const rows = new Map<string, { states: string[]; codes: Set<string> }>();
   for (let i = 0; i < count; i++) {
     for (const control of negativeControls(700 + i)) {
-      const bytes = writeSpectrum({ ...control, title: control.name, resolutionPerCm: 0.5 }, exactStyle);
+      const style = control.header === undefined ? exactStyle : { ...exactStyle, header: [control.header] };
+      const bytes = writeSpectrum({ ...control, title: control.name, resolutionPerCm: 0.5 }, style);
       const made = reference({ name: 'control.csv', bytes });
       const row = rows.get(control.name) ?? { states: [], codes: new Set() };
       row.states.push(made.reliability);

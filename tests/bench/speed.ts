@@ -3,10 +3,11 @@ import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { simulateSpectrum, type SimulationOptions } from '../../electron/backend/example/simulate.ts';
-import { assignLines } from '../../shared-core/assignment/index.ts';
-import { findLines } from '../../shared-core/lines/index.ts';
+import { assignLines } from '../../shared-core/assignment/assign-lines.ts';
+import { findLines } from '../../shared-core/lines/find-lines.ts';
 import { makeReference } from '../../shared-core/reference/make-reference.ts';
-import { prepareSpectrum, readSpectrumFile } from '../../shared-core/spectrum/index.ts';
+import { prepareSpectrum } from '../../shared-core/spectrum/prepare/prepare-spectrum.ts';
+import { readSpectrumFile } from '../../shared-core/spectrum/read-spectrum-file.ts';
 import type { SourceFile } from '../../shared-core/spectrum/types.ts';
 import { benchSettings, fileOf } from './judge.ts';
 import { printTable } from './print.ts';
@@ -105,7 +106,6 @@ export function benchSpeed(repeats: number): void {
         files: [files[0]!],
         settings: benchSettings,
         ...(line ? { corrections: [{ kind: 'line-out', lineId: line.id }] } : {}),
-        previous: made,
       }),
     repeats,
   );

@@ -9,13 +9,13 @@ export interface Measurement {
 }
 
 /** Runs a measurement on every task, in this process or spread over worker threads; records come in the order of tasks. */
-export async function spread<Task, Result>(
+export async function spread<Result>(
   measurement: Measurement,
-  tasks: readonly Task[],
+  tasks: readonly unknown[],
   workers: number,
 ): Promise<Result[]> {
   if (workers <= 1) {
-    const loaded = (await import(measurement.module)) as Record<string, (task: Task) => Result>;
+    const loaded = (await import(measurement.module)) as Record<string, (task: unknown) => Result>;
     return tasks.map((task) => loaded[measurement.name]!(task));
   }
   const results = new Array<Result>(tasks.length);
