@@ -110,17 +110,17 @@ export function benchOf(
 export function misfits(
   bench: Bench,
   values: Values,
-  hypothesis: Pick<Hypothesis, 'free' | 'meant'>,
+  { free, meant }: Pick<Hypothesis, 'free' | 'meant'> = { free: nothingFree, meant: nothingMeant },
 ): number[] {
   const out: number[] = [];
   for (let i = 0; i < bench.fields.length; i++) {
     const f = bench.fields[i]!;
-    if (hypothesis.free.has(f.key)) continue;
+    if (free.has(f.key)) continue;
     const predicted = values[f.key];
     if (predicted === undefined) continue;
     const expected = bench.correct.values[f.key]!;
     const scale = Math.max(1, Math.abs(predicted / expected));
-    const value = hypothesis.meant.get(f.key) ?? f.value;
+    const value = meant.get(f.key) ?? f.value;
     if (Math.abs(value - predicted) > windowSigmas * bench.generous[i]! * scale) out.push(i);
   }
   return out;

@@ -1,6 +1,5 @@
 import {
   derive,
-  derivationOrder,
   standardSteps,
   type DeriveContext,
   type Step,
@@ -34,15 +33,18 @@ export function withSlips(
 
 /** Every quantity as a student with these slips would hand it in, before rounding. */
 export function predict(context: DeriveContext, slipped: SlippedSteps): Values {
-  let values = derive(context, slipped.carried);
-  for (const steps of slipped.alone) {
-    const changed: Values = {};
-    for (const key of derivationOrder) {
-      const step = steps[key];
-      const value = step === undefined ? null : step(values, context);
-      if (value !== null && Number.isFinite(value)) changed[key] = value;
-    }
-    values = { ...values, ...changed };
+  return slipped.alone.reduce(
+    (values, steps) => writtenWith(values, steps, context),
+    derive(context, slipped.carried),
+  );
+}
+
+/** Values in which some are replaced by wrong ones that nothing else follows from. */
+export function writtenWith(values: Values, steps: Steps, context: DeriveContext): Values {
+  const changed: Values = { ...values };
+  for (const key of Object.keys(steps) as QuantityKey[]) {
+    const value = steps[key]!(values, context);
+    if (value !== null && Number.isFinite(value)) changed[key] = value;
   }
-  return values;
+  return changed;
 }

@@ -100,13 +100,15 @@ function weighFrom(
   if (reading === null) return null;
   const groups = setsByNumber(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
-  const replayed = (variant: SlipVariant, group: number): Reading | null => {
+  const replayed = (variant: SlipVariant, group: number, sample: boolean): Reading | null => {
     const readings = known.get(variant) ?? new Map<number, Reading | null>();
     known.set(variant, readings);
-    const before = readings.get(group);
+    const id = sample ? -1 - group : group;
+    const before = readings.get(id);
     if (before !== undefined) return before;
-    const fresh = readingOf(groups[group] ?? [], options.method, scheme, molecule, key.extra, variant.replay);
-    readings.set(group, fresh);
+    const chosen = sample ? groups[group]!.slice(0, 1) : groups[group]!;
+    const fresh = readingOf(chosen, options.method, scheme, molecule, key.extra, variant.replay);
+    readings.set(id, fresh);
     return fresh;
   };
   return weighSlips({
