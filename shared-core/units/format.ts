@@ -34,6 +34,8 @@ export function powerOf(value: number): number {
 
 const raisedDigits = '⁰¹²³⁴⁵⁶⁷⁸⁹';
 const raised = (n: number): string =>
-  `${n < 0 ? '⁻' : ''}${[...String(Math.abs(n))].map((d) => raisedDigits[Number(d)]!).join('')}`;
+  `${n < 0 ? '⁻' : ''}${Array.from(String(Math.abs(n)), (d) => d)
+    .map((d) => raisedDigits[Number(d)]!)
+    .join('')}`;
 const trimmed = (v: number): string => String(Number(v.toPrecision(7)));
 const signed = (text: string): string => text.replace('-', '−');

@@ -29,7 +29,11 @@ const notGiven = /^(|-|–|—|n\/?a|none|keine?|nil|\?|\.|not given|not determi
 /** Blanks of every width, real minus signs and raised digits become plain ones; signs for "about" go. */
 function plain(text: string): string {
   return text
-    .replace(/[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+/g, (run) => [...run].map((c) => superscripts[c]!).join(''))
+    .replace(/[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+/g, (run) =>
+      Array.from(run, (c) => c)
+        .map((c) => superscripts[c]!)
+        .join(''),
+    )
     .replace(/[\u00a0\u1680\u2000-\u200a\u202f\u205f\u3000]/g, ' ')
     .replace(/[\u200b\ufeff]/g, '')
     .replace(/[−–‒﹣－]/g, '-')
