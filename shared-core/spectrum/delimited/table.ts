@@ -48,11 +48,6 @@ function findStart(lines: readonly string[], layout: FoundLayout, row: Row): num
   return run > 0 ? runStart : -1;
 }
 
-function firstNumber(text: string, layout: Layout, row: Row): number {
-  readRow(text, layout, row);
-  return row.values[0]!;
-}
-
 /** A last header line that turns into the point before the first one when a stray character is taken out of it. */
 function refuseDamagedFirstRow(
   lines: readonly string[],
@@ -71,29 +66,38 @@ function refuseDamagedFirstRow(
   if (digits.length >= 0.6 * cell.length && back > 0.5 && back < 2.5) refuseRow(lines[at]!, at, layout, row);
 }
 
-/** Rows above the start that continue the abscissa of the data belong to it: then the line between is damage. */
-function refuseDamagedStart(lines: readonly string[], start: number, layout: FoundLayout, row: Row): void {
-  const following = lines
-    .slice(start, start + 60)
-    .filter((text) => hasContent(text) && !isSkipped(text, layout));
-  const first = firstNumber(following[0] ?? '', layout, row);
-  const later = firstNumber(following[Math.min(5, following.length - 1)] ?? '', layout, row);
-  const step = (later - first) / Math.min(5, following.length - 1);
-  if (!(Math.abs(step) > 0)) return;
-  refuseDamagedFirstRow(lines, start, first, step, layout, row);
+/** Rows above the start whose numbers lie among those of the data belong to it: then the line between is damage. */
+function refuseDamagedStart(
+  lines: readonly string[],
+  start: number,
+  columns: readonly Float64Array[],
+  layout: FoundLayout,
+  row: Row,
+): void {
+  const rows = columns[0]!.length;
+  const [x] = columns;
+  const steps = Math.min(5, rows - 1);
+  const step = (x![steps]! - x![0]!) / steps;
+  if (Math.abs(step) > 0) refuseDamagedFirstRow(lines, start, x![0]!, step, layout, row);
+  const limits = columns.map((column) => {
+    const numbers = column.filter((value) => !Number.isNaN(value));
+    const least = numbers.reduce((a, b) => Math.min(a, b), Infinity);
+    const greatest = numbers.reduce((a, b) => Math.max(a, b), -Infinity);
+    const slack = (8 * (greatest - least)) / rows;
+    return [least - slack, greatest + slack] as const;
+  });
   let bad = -1;
-  for (let i = start - 1; i >= Math.max(0, start - 40); i--) {
+  for (let i = start - 1; i >= Math.max(0, start - 200); i--) {
     const text = lines[i]!;
     if (!hasContent(text) || isSkipped(text, layout)) continue;
     readRow(text, layout, row);
-    if (!isDataRow(row, layout)) {
-      bad = i;
-      continue;
-    }
-    const back = (first - row.values[0]!) / step;
-    if (bad >= 0 && back > 0 && back < 8 && Math.abs(back - Math.round(back)) < 0.2)
+    if (!isDataRow(row, layout)) bad = i;
+    else if (
+      bad >= 0 &&
+      limits.every(([least, greatest], k) => row.values[k]! >= least && row.values[k]! <= greatest)
+    ) {
       refuseRow(lines[bad]!, bad, layout, row);
-    return;
+    }
   }
 }
 
@@ -191,7 +195,6 @@ export function readNumberTable(lines: readonly string[]): NumberTable {
       'The file is text without a table of numbers (two columns: wavenumber and absorbance or transmittance): check that this is the spectrum file, or export it again.',
     );
   }
-  refuseDamagedStart(lines, start, layout, row);
   const most = lines.length - start;
   if (most * layout.columns > mostCells) {
     refuse(
@@ -215,6 +218,7 @@ export function readNumberTable(lines: readonly string[]): NumberTable {
     lineOfRow[count++] = i + 1;
   }
   const table = columns.map((column) => column.subarray(0, count));
+  refuseDamagedStart(lines, start, table, layout, row);
   refuseSplitDecimals(table, layout, lineOfRow.subarray(0, count));
   return {
     layout,
