@@ -100,7 +100,7 @@ function replayed(
   const ofGroup = logPrior - Math.log(input.groups);
   return Array.from({ length: input.groups }, (_, g) => g).flatMap((g) => {
     const sample = input.replayed(variant, g, true);
-    if (sample === null || misfits(bench, valuesOf(sample)).length > which.mostOutOfReach + 1) return [];
+    if (sample === null || misfits(bench, valuesOf(sample)).length > which.mostOutOfReach + 2) return [];
     const reading = input.replayed(variant, g, false) ?? sample;
     return (
       asCandidate(search, definition, variant, slipped, ofGroup, reading, valuesOf(reading), which) ?? []

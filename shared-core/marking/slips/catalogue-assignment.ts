@@ -60,10 +60,12 @@ export const assignmentSlips: readonly SlipDefinition[] = [
       otherHeavy === null
         ? []
         : [
-            replay(`lines of ${otherHeavy.isotopologue.name}`, (lines) => sameMs(lines, otherHeavy.lines)),
+            replay(`lines of ${otherHeavy.isotopologue.name}`, (lines) =>
+              sameMs(lines, byMOnce(otherHeavy.lines)),
+            ),
             {
               ...replay(`lines and mass of ${otherHeavy.isotopologue.name}`, (lines) =>
-                sameMs(lines, otherHeavy.lines),
+                sameMs(lines, byMOnce(otherHeavy.lines)),
               ),
               steps: { mu: () => reducedMassOf(otherHeavy.isotopologue, settings.masses) },
             },
@@ -79,7 +81,7 @@ export const assignmentSlips: readonly SlipDefinition[] = [
         ? []
         : [0.5, 0.24].map((f) =>
             replay(`${f} of the way to ${otherHeavy.isotopologue.name}`, (lines) =>
-              averaged(lines, otherHeavy.lines, f),
+              averaged(lines, byMOnce(otherHeavy.lines), f),
             ),
           ),
   },
@@ -93,7 +95,7 @@ export const assignmentSlips: readonly SlipDefinition[] = [
         ? []
         : ([1, -1] as const).map((side) =>
             replay(`${side > 0 ? 'R' : 'P'} branch of ${otherHeavy.isotopologue.name}`, (lines) =>
-              exchanged(lines, otherHeavy.lines, (m) => m * side > 0),
+              exchanged(lines, byMOnce(otherHeavy.lines), (m) => m * side > 0),
             ),
           ),
   },
@@ -112,7 +114,7 @@ export const assignmentSlips: readonly SlipDefinition[] = [
                 replay(`from |m| = ${from} on${side === 0 ? '' : side > 0 ? ' in R' : ' in P'}`, (lines) =>
                   exchanged(
                     lines,
-                    otherHeavy.lines,
+                    byMOnce(otherHeavy.lines),
                     (m) => Math.abs(m) >= from && (side === 0 || m * side > 0),
                   ),
                 ),
@@ -225,19 +227,28 @@ function skippedAt(last: number): SlipVariant[] {
   );
 }
 
+type ByM = ReadonlyMap<number, MethodLine>;
+
+const maps = new WeakMap<Lines, ByM>();
+
+/** The same map for the same lines: replays ask for it thousands of times. */
+function byMOnce(lines: Lines): ByM {
+  const known = maps.get(lines) ?? byM(lines);
+  maps.set(lines, known);
+  return known;
+}
+
 function byM(lines: Lines): Map<number, MethodLine> {
   return new Map(lines.map((l) => [l.m, l]));
 }
 
 /** The other isotopologue's lines with the same m; null where it has too few of them. */
-function sameMs(lines: Lines, others: Lines): ReplayedLines | null {
-  const other = byM(others);
+function sameMs(lines: Lines, other: ByM): ReplayedLines | null {
   const found = lines.flatMap((l) => other.get(l.m) ?? []);
   return found.length >= 6 && 2 * found.length > lines.length ? { lines: found, method: null } : null;
 }
 
-function averaged(lines: Lines, others: Lines, f: number): ReplayedLines | null {
-  const other = byM(others);
+function averaged(lines: Lines, other: ByM, f: number): ReplayedLines | null {
   const found = lines.flatMap((l) => {
     const o = other.get(l.m);
     return o === undefined
@@ -247,8 +258,7 @@ function averaged(lines: Lines, others: Lines, f: number): ReplayedLines | null 
   return found.length >= 6 ? { lines: found, method: null } : null;
 }
 
-function exchanged(lines: Lines, others: Lines, which: (m: number) => boolean): ReplayedLines | null {
-  const other = byM(others);
+function exchanged(lines: Lines, other: ByM, which: (m: number) => boolean): ReplayedLines | null {
   const found = lines.flatMap((l) => (which(l.m) ? (other.get(l.m) ?? []) : l));
   return found.length >= 6 && found.some((l) => which(l.m)) ? { lines: found, method: null } : null;
 }

@@ -1,4 +1,4 @@
-import { candidatesOf, type Candidate } from './candidates.ts';
+import { candidatesOf, type Candidate, type WhichWays } from './candidates.ts';
 import { benchOf, couldGain, misfits, type Bench, type Weighed } from './hypothesis.ts';
 import { logSum } from './likelihood.ts';
 import { takeOnTop } from './on-top.ts';
@@ -24,14 +24,18 @@ export function weighSlips(input: WeighInput): Verdict | null {
   for (const h of unknownCauses(search)) search.take(h);
   // Where correct work fits, only slips that fit as well can matter, and no replay comes near it.
   const fits = misfits(bench, bench.correct.values).length === 0 && correctStands(search);
-  const candidates = candidatesOf(search, {
-    replays: fits ? 'none' : 'all',
-    complete: fits,
-    mostOutOfReach: Math.max(2, Math.floor(bench.fields.length / 2)),
-  });
-  weighLikeliest(search, candidates);
+  const steps = candidatesOf(search, { replays: 'none', complete: fits, mostOutOfReach: 0 });
+  weighLikeliest(search, steps);
+  const replays = fits ? [] : candidatesOf(search, replaysAfter(settled(search)));
+  weighLikeliest(search, replays);
+  const candidates = [...steps, ...replays];
   if (!correctStands(search)) lookCloser(search, candidates);
   return { accounts: normalised(search.found), bench };
+}
+
+/** Once a step explains it all, only replays that explain all too are rivals. */
+function replaysAfter(explained: boolean): WhichWays {
+  return { replays: 'only', complete: explained, mostOutOfReach: explained ? 0 : 2 };
 }
 
 /** Accounts with something left over, with slips of the pen, with two causes: only while one cause does not explain it all. */
