@@ -10,7 +10,7 @@ export interface EvenGrid {
 
 /** Decimals to which values are written, found from the values themselves (0-8); null where they have more. */
 export function decimalsOf(values: Float64Array): number | null {
-  const stride = Math.max(1, Math.floor(values.length / 4000));
+  const stride = Math.max(1, Math.floor(values.length / 1500));
   for (let decimals = 0; decimals <= 8; decimals++) {
     const scale = 10 ** decimals;
     let all = true;

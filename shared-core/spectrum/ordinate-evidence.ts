@@ -132,7 +132,7 @@ function upperEdge(y: Float64Array): Pick<OrdinateEvidence, 'edgeHeight' | 'edge
 }
 
 export function ordinateEvidence(y: Float64Array): OrdinateEvidence {
-  const sorted = sampled(y, 5000);
+  const sorted = sampled(y, 2000);
   const quantile = (share: number): number => sorted[Math.floor(share * (sorted.length - 1))]!;
   let least = Infinity;
   let greatest = -Infinity;

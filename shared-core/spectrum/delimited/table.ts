@@ -66,6 +66,16 @@ function refuseDamagedFirstRow(
   if (digits.length >= 0.6 * cell.length && back > 0.5 && back < 2.5) refuseRow(lines[at]!, at, layout, row);
 }
 
+function liesAmong(value: number, column: Float64Array): boolean {
+  let [least, greatest] = [Infinity, -Infinity];
+  for (const each of column) {
+    if (each < least) least = each;
+    if (each > greatest) greatest = each;
+  }
+  const slack = (8 * (greatest - least)) / column.length;
+  return value >= least - slack && value <= greatest + slack;
+}
+
 /** Rows above the start whose numbers lie among those of the data belong to it: then the line between is damage. */
 function refuseDamagedStart(
   lines: readonly string[],
@@ -74,28 +84,17 @@ function refuseDamagedStart(
   layout: FoundLayout,
   row: Row,
 ): void {
-  const rows = columns[0]!.length;
   const [x] = columns;
-  const steps = Math.min(5, rows - 1);
+  const steps = Math.min(5, x!.length - 1);
   const step = (x![steps]! - x![0]!) / steps;
   if (Math.abs(step) > 0) refuseDamagedFirstRow(lines, start, x![0]!, step, layout, row);
-  const limits = columns.map((column) => {
-    const numbers = column.filter((value) => !Number.isNaN(value));
-    const least = numbers.reduce((a, b) => Math.min(a, b), Infinity);
-    const greatest = numbers.reduce((a, b) => Math.max(a, b), -Infinity);
-    const slack = (8 * (greatest - least)) / rows;
-    return [least - slack, greatest + slack] as const;
-  });
   let bad = -1;
   for (let i = start - 1; i >= Math.max(0, start - 200); i--) {
     const text = lines[i]!;
     if (!hasContent(text) || isSkipped(text, layout)) continue;
     readRow(text, layout, row);
     if (!isDataRow(row, layout)) bad = i;
-    else if (
-      bad >= 0 &&
-      limits.every(([least, greatest], k) => row.values[k]! >= least && row.values[k]! <= greatest)
-    ) {
+    else if (bad >= 0 && columns.every((column, k) => liesAmong(row.values[k]!, column))) {
       refuseRow(lines[bad]!, bad, layout, row);
     }
   }

@@ -204,7 +204,7 @@ function withoutFreePoints(residual: Float64Array, least: number, scratch: Float
  * correlation; never below `least` (the rounding of the file).
  */
 export function estimateNoise(residual: Float64Array, free: Uint8Array, least: number): NoiseEstimate {
-  const scratch = new Float64Array(Math.min(residual.length, 20_000));
+  const scratch = new Float64Array(Math.min(residual.length, 8000));
   const segments = segmentsOf(free);
   const freeShare = segments.reduce((sum, segment) => sum + segment.freeShare, 0) / segments.length;
   if (freeShare < 0.05) return withoutFreePoints(residual, least, scratch);
@@ -234,7 +234,7 @@ export function estimateNoise(residual: Float64Array, free: Uint8Array, least: n
 
 /** A quick overall figure of the same kind: all points where `free` is null (lines then widen it a little). */
 export function scatterOf(residual: Float64Array, free: Uint8Array | null): number {
-  const scratch = new Float64Array(Math.min(residual.length, 4000));
+  const scratch = new Float64Array(Math.min(residual.length, 2000));
   const points = free ?? new Uint8Array(residual.length).fill(1);
   const lag = decorrelationLag(residual, points, scratch);
   return lagDeviation(residual, points, lag, 0, residual.length, scratch).deviation;

@@ -39,7 +39,7 @@ function transmittanceOf(y: Float64Array, kind: OrdinateKind): Float64Array {
 }
 
 function medianStep(x: Float64Array): number {
-  const stride = Math.max(1, Math.floor(x.length / 2000));
+  const stride = Math.max(1, Math.floor(x.length / 300));
   const steps: number[] = [];
   for (let i = 0; i + 1 < x.length; i += stride) steps.push(x[i + 1]! - x[i]!);
   steps.sort((a, b) => a - b);

@@ -77,10 +77,10 @@ export function refuseKnownFormats(bytes: Uint8Array): void {
   }
 }
 
-/** Up to 64 stretches of 2 KB, spread evenly: what a look at any size of file costs. */
+/** Up to 32 stretches of 1 KB, spread evenly: what a look at any size of file costs. */
 function samplesOf(bytes: Uint8Array): Uint8Array[] {
-  const stretch = 2048;
-  const count = Math.min(64, Math.ceil(bytes.length / stretch));
+  const stretch = 1024;
+  const count = Math.min(32, Math.ceil(bytes.length / stretch));
   return Array.from({ length: count }, (_, i) => {
     const from = count === 1 ? 0 : Math.floor(((bytes.length - stretch) * i) / (count - 1));
     return bytes.subarray(Math.max(0, from), Math.max(0, from) + stretch);
