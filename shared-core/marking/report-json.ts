@@ -1,4 +1,4 @@
-import type { Constants, PrescribedConstants } from '../reference/types.ts';
+import type { Constants, FileReference, PrescribedConstants } from '../reference/types.ts';
 import type { MarkedSubmission, MarkedValue, MarkingScheme, SectionObservation } from './types.ts';
 
 /** Anything that JSON holds. */
@@ -42,7 +42,7 @@ export function submissionJson(marked: MarkedSubmission): Json {
     isotopologue: submission.isotopologue,
     spectra: submission.spectra,
     spectrum: marked.spectrum,
-    reference: referenceJson(marked),
+    reference: submissionReferenceJson(marked),
     values: marked.values.map(valueJson),
     slips: marked.slips.map(({ code, probability, isotopologue, quantities, text, tellApart }) => ({
       code, probability: Math.round(1e4 * probability) / 1e4, isotopologue, quantities, text, tellApart,
@@ -61,11 +61,20 @@ export function submissionJson(marked: MarkedSubmission): Json {
 }
 
 /** The reference of a submission as report.json holds it: best estimate, prescribed constants, partners, lines. */
-function referenceJson(marked: MarkedSubmission): Json {
+function submissionReferenceJson(marked: MarkedSubmission): Json {
   const { reference } = marked;
   if (reference === null) return null;
   const own = marked.submission.isotopologue;
   const main = own !== null && reference.isotopologues[own] !== undefined ? own : reference.isotopologue;
+  return referenceJson(reference, main, main === null ? undefined : marked.prescribed[main]?.[0]);
+}
+
+/** A reference as report.json holds it, seen from one of its isotopologues (null: there is none). */
+export function referenceJson(
+  reference: FileReference,
+  main: string | null,
+  prescribed: PrescribedConstants | undefined,
+): Json {
   const best = main === null ? reference.best : (reference.isotopologues[main] ?? reference.best);
   const others = Object.entries(reference.isotopologues).filter(([name]) => name !== main);
   return {
@@ -78,7 +87,7 @@ function referenceJson(marked: MarkedSubmission): Json {
     ordinate: reference.ordinate,
     isotopologue: main,
     best: constantsJson(best),
-    prescribed: prescribedJson(main === null ? undefined : marked.prescribed[main]?.[0]),
+    prescribed: prescribedJson(prescribed),
     isotopologues: Object.fromEntries(others.map(([name, constants]) => [name, constantsJson(constants)])),
     runnerUp:
       reference.runnerUp === null ? null : { text: reference.runnerUp.text, odds: reference.runnerUp.odds },
