@@ -37,6 +37,9 @@ export function ordinateOf(label: string): OrdinateLabel {
   const text = label.trim();
   if (/interferogram|interf[eé]rogramm/i.test(text)) return 'interferogram';
   if (/single\s*-?\s*beam|einkanal|einzelkanal|mono-?canal|haz simple|\bbackground\b|hintergrund|volt|\bcounts?\b|\benergy\b/i.test(text)) return 'single-beam'; // prettier-ignore
+  if (/absorptan|absorptionsgrad/i.test(text)) return 'percent-absorption';
+  if (/log(?:10)?\s*\(?\s*(?:1|I0|I_0)\s*\/\s*(?:T|I)\b|-\s*log(?:10)?\s*\(?\s*T\b/i.test(text))
+    return 'absorbance';
   if (/reflect|reflex|kubelka|1\s*\/\s*R\b|\bATR\b/i.test(text)) return 'reflectance';
   if (/raman/i.test(text)) return 'raman';
   if (/emission|emissiv|radian/i.test(text)) return 'emission';

@@ -189,7 +189,8 @@ function field(block: string, label: string): number {
 export function isInJcampText(text: string, spectrum: Spectrum): boolean {
   const blocks = text.replaceAll(/\r\n?/g, '\n').split(/^[ \t]*##[\s\-/_]*END[\s\-/_]*=.*$/im);
   return blocks.some((whole) => {
-    const block = whole.slice(Math.max(0, whole.toUpperCase().lastIndexOf('##TITLE')));
+    const titles = [...whole.matchAll(/^[ \t]*##[\s\-/_]*TITLE[\s\-/_]*=/gim)];
+    const block = whole.slice(titles.at(-1)?.index ?? 0);
     const found =
       /^[ \t]*##[\s\-/_]*X[\s\-/_]*Y[\s\-/_]*(?:D[\s\-/_]*A[\s\-/_]*T[\s\-/_]*A|P[\s\-/_]*O[\s\-/_]*I[\s\-/_]*N[\s\-/_]*T[\s\-/_]*S)[\s\-/_]*=([^\n]*)\n([^#]*)/im.exec(
         block,

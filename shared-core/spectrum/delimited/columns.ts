@@ -2,6 +2,7 @@ import type { Reason } from '../../units/types.ts';
 import { refuse } from '../refusal.ts';
 import { abscissaOf, ordinateOf } from '../words.ts';
 import { blanks, textCells } from './cells.ts';
+import { abscissaFromHeader, ordinateFromHeader } from './header-words.ts';
 import type { NumberTable } from './table.ts';
 
 /** One spectrum of a table: which column is its abscissa, which its ordinate, and what stands above them. */
@@ -75,14 +76,6 @@ function labelsOf(table: NumberTable): string[] {
     : names;
 }
 
-/** Lines of the header that speak of the axes, where no names stand above the columns. */
-function spokenLabel(table: NumberTable, says: (text: string) => boolean, axis: RegExp): string {
-  const lines = table.header.slice(-400).filter((line) => line.trim() !== '');
-  const named = lines.find((line) => axis.test(line) && says(line));
-  if (named) return named.replace(/^.*?[=:,;\t]/, '');
-  return lines.findLast((line) => says(line) && line.length < 80) ?? '';
-}
-
 function chooseAbscissa(
   table: NumberTable,
   candidates: readonly number[],
@@ -143,13 +136,10 @@ export function chooseColumns(table: NumberTable): { pairs: ColumnPair[]; notes:
   }
   const abscissa = chooseAbscissa(table, used, labels);
   const named = namesAbove(table) !== null;
-  const abscissaLabel =
-    labels[abscissa]! || spokenLabel(table, (line) => abscissaOf(line) !== null, /\bx|absci|wave/i);
-  const spoken = spokenLabel(
-    table,
-    (line) => ordinateOf(line.replace(/^.*?[=:,;\t]/, '')) !== null,
-    /\by|ordin/i,
-  );
+  const header = table.header.slice(-400).filter((line) => line.trim() !== '');
+  const ownLabel = labels[abscissa]!;
+  const abscissaLabel = abscissaOf(ownLabel) === null ? abscissaFromHeader(header) || ownLabel : ownLabel;
+  const spoken = ordinateFromHeader(header);
   if (arePairs(table, used, abscissa)) {
     const pairs = used.flatMap((k, i) =>
       i % 2 === 1

@@ -129,3 +129,28 @@ describe('abscissa, from label and numbers together', () => {
     expect([...spectrum.wavenumberPerCm]).toEqual(uneven.map((value) => Number(value.toFixed(2))));
   });
 });
+
+describe('what a header says', () => {
+  const { x, y } = inventedPoints(200, 2700, 0.5);
+  const rows = rowsOf({ x, y: y.map((a) => 10 ** -a) }, { separator: '\t' });
+  const read = (...header: string[]) => readOne([...header, ...rows].join('\n'));
+
+  it('is taken from lines about the axes', () => {
+    const spectrum = read('XUNITS\tcm-1', 'YUNITS\tTransmittance', 'NPOINTS\t200');
+    expect(spectrum.abscissaReason).toMatch(/calls its abscissa wavenumbers/);
+    expect(spectrum.ordinateReason).toMatch(/calls its ordinate transmittance/);
+    expect(read('Data type: single beam').ordinateKind).toBe('unusable');
+  });
+
+  it('is not taken from remarks about laser, background and scans', () => {
+    const spectrum = read(
+      'Laser wavelength: 632.8 nm',
+      'Background: 32 scans',
+      'Detector counts 5',
+      'Energy 7000',
+    );
+    expect(spectrum.abscissaKind).toBe('wavenumber-per-cm');
+    expect(spectrum.ordinateKind).toBe('transmittance');
+    expect(spectrum.ordinateReason).toMatch(/does not name its ordinate/);
+  });
+});
