@@ -111,13 +111,16 @@ function compareWithSet(
   return comparisons;
 }
 
-/** Points, and the sum of squared deviations in tolerances (each counted up to ten). */
+/** A value far off does not pull the choice of lines towards itself. */
+const farOff = 4;
+
+/** Points, and the sum of squared deviations in full tolerances, each up to a limit. */
 function scoreOf(comparisons: ReadonlyMap<QuantityKey, Comparison>): readonly [number, number] {
   let points = 0;
   let off = 0;
   for (const c of comparisons.values()) {
     points += c.agreement === 'within' ? 1 : c.agreement === 'part credit' ? 0.5 : 0;
-    off += Math.min(100, (c.deviation / c.tolerance.full) ** 2);
+    off += Math.min(farOff, (c.deviation / c.tolerance.full) ** 2);
   }
   return [points, off];
 }

@@ -67,7 +67,7 @@ export const coefficientSlips: readonly SlipDefinition[] = [
   {
     code: 'bbar-as-b0',
     family: 'coefficients',
-    weight: 1.5,
+    weight: 1,
     what: 'Half the spacing, (B_0 + B_1)/2, was given as B_0',
     variants: () => [
       ...bothWays('B_0 − αe/2', { B0: meanB, alphaE: trueAlpha }),
