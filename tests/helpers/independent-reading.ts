@@ -117,10 +117,12 @@ export function equalsPoints(spectrum: Spectrum, pairs: readonly (readonly [numb
 
 /** Whether a second reading of a delimited text finds these points in two of its columns. */
 export function isInDelimitedText(text: string, spectrum: Spectrum): boolean {
-  const lines = text
+  const section = /, rows from line (\d+) to (\d+)$/.exec(spectrum.title);
+  const all = text
     .replace(/\s*\u001a\s*$/, '')
     .replace(/^\uFEFF/, '')
     .split(/\r\n|\n|\r/);
+  const lines = section ? all.slice(Number(section[1]) - 1, Number(section[2])) : all;
   for (const separator of [/\t/, /;/, /,/, /[ \t\u00a0\u202f\ufeff]+/]) {
     for (const comma of [false, true]) {
       if (comma && separator.source === ',') continue;

@@ -4,6 +4,7 @@ import { counted, refuse, RefusedFile } from '../refusal.ts';
 import type { Spectrum } from '../types.ts';
 import { ordinateOf, abscissaOf } from '../words.ts';
 import { chooseColumns, type ColumnPair } from './columns.ts';
+import { sectionsOf } from './sections.ts';
 import { readNumberTable, type NumberTable } from './table.ts';
 
 const marks = { 9: 'tabs', 32: 'blanks', 44: 'commas', 59: 'semicolons' } as const;
@@ -32,23 +33,56 @@ function saysInAir(header: readonly string[]): boolean {
   );
 }
 
+interface Part {
+  readonly pair: ColumnPair;
+  readonly from: number;
+  readonly to: number;
+  readonly title: string;
+}
+
+/** One part per column of ordinates and per section of rows. */
+function partsOf(fileName: string, table: NumberTable, pairs: readonly ColumnPair[]): Part[] {
+  const header = titleFrom(table);
+  return pairs.flatMap((pair) => {
+    const column = pair.title ?? `${baseName(fileName)}, column ${pair.ordinate + 1}`;
+    const title = pairs.length === 1 ? (header ?? baseName(fileName)) : column;
+    const sections = sectionsOf(table.columns[pair.abscissa]!);
+    return sections.map(({ from, to }) => ({
+      pair,
+      from,
+      to,
+      title:
+        sections.length === 1
+          ? title
+          : `${title}, rows from line ${table.lineOfRow[from]!} to ${table.lineOfRow[to - 1]!}`,
+    }));
+  });
+}
+
 function spectrumOf(
   fileName: string,
   table: NumberTable,
-  pair: ColumnPair,
-  title: string,
-  notes: Reason[],
+  { pair, from, to, title }: Part,
+  notes: readonly Reason[],
 ): Spectrum {
   return assembleSpectrum({
     fileName,
     title,
-    x: table.columns[pair.abscissa]!,
-    y: table.columns[pair.ordinate]!,
+    x: table.columns[pair.abscissa]!.subarray(from, to),
+    y: table.columns[pair.ordinate]!.subarray(from, to),
     abscissaLabel: pair.abscissaLabel,
     ordinateLabel: pair.ordinateLabel,
     inAir: saysInAir(table.header),
     notes,
   });
+}
+
+function severalNote(parts: readonly Part[], pairs: number): Reason {
+  const what =
+    parts.length > pairs
+      ? `${parts.length} spectra one below the other`
+      : `${counted(pairs, 'column')} of ordinates`;
+  return { code: 'several-spectra', text: `The file holds ${what}; each was taken as a spectrum.` };
 }
 
 /**
@@ -66,27 +100,20 @@ export function readDelimited(fileName: string, lines: readonly string[]): Spect
       text: `Decimals are marked by commas, columns set apart by ${delimiter}.`,
     });
   }
-  const only = pairs[0];
-  if (!only) {
+  if (pairs.length === 0) {
     refuse(
       'one-column',
       'The file has an abscissa and no column of ordinates that changes: export the spectrum again.',
       null,
     );
   }
-  if (pairs.length === 1) {
-    return [spectrumOf(fileName, table, only, titleFrom(table) ?? baseName(fileName), common)];
-  }
-  common.push({
-    code: 'several-spectra',
-    text: `The file holds ${counted(pairs.length, 'column')} of ordinates; each was taken as a spectrum.`,
-  });
+  const parts = partsOf(fileName, table, pairs);
+  if (parts.length > 1) common.push(severalNote(parts, pairs.length));
   let refused: RefusedFile | null = null;
   const spectra: Spectrum[] = [];
-  for (const pair of pairs) {
-    const title = pair.title ?? `${baseName(fileName)}, column ${pair.ordinate + 1}`;
+  for (const part of parts) {
     try {
-      spectra.push(spectrumOf(fileName, table, pair, title, common));
+      spectra.push(spectrumOf(fileName, table, part, common));
     } catch (error) {
       if (!(error instanceof RefusedFile)) throw error;
       refused = error;
@@ -94,7 +121,7 @@ export function readDelimited(fileName: string, lines: readonly string[]): Spect
   }
   if (refused && spectra.length === 0) throw refused;
   if (!refused) return spectra;
-  const left = counted(pairs.length - spectra.length, 'column');
+  const left = counted(parts.length - spectra.length, 'part');
   const note = {
     code: 'column-left-out',
     text: `${left} could not be read as a spectrum (${refused.message})`,

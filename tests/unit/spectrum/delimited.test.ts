@@ -165,6 +165,23 @@ describe('several spectra in one text', () => {
     ]);
   });
 
+  it('takes spectra that stand one below the other apart, in whichever direction they run', () => {
+    const second = rowsOf({ x: points.x, y: points.y.map((value) => 2 * value) });
+    for (const lower of [second, second.toReversed()]) {
+      const spectra = read(['cm-1,A', ...rows, ...lower].join('\n'));
+      expect(spectra.map((spectrum) => spectrum.title)).toEqual([
+        'three, rows from line 2 to 201',
+        'three, rows from line 202 to 401',
+      ]);
+      expect([...spectra[0]!.ordinate]).toEqual(yWritten);
+      expect(spectra[1]!.ordinate[7]).toBe(Number((2 * points.y[7]!).toFixed(5)));
+    }
+  });
+
+  it('takes pieces of one spectrum in any order for one', () => {
+    expectPoints([...rows.slice(120), ...rows.slice(50, 120), ...rows.slice(0, 50)].join('\n'));
+  });
+
   it('takes pairs of columns, each with its own abscissa', () => {
     const pairs = points.x.map(
       (x, i) => `${x}\t${points.y[i]!.toFixed(4)}\t${x + 0.25}\t${(2 * points.y[i]!).toFixed(4)}`,
