@@ -15,6 +15,11 @@ export interface Candidate {
   readonly off: readonly number[];
   /** False where all that it moves is plainly not there: then it can only be the second of a pair. */
   readonly explains: boolean;
+  /** What it predicts. */
+  readonly values: Values;
+  /** The fields of `off`, and those that it moves, one bit each. */
+  readonly offBits: number;
+  readonly moveBits: number;
   /** About the most that it can weigh; −∞ where something is left over. */
   readonly most: number;
 }
@@ -73,7 +78,9 @@ function asCandidate(
   const explains =
     off.length === 0 || [...moves].some((key) => !off.some((i) => bench.fields[i]!.key === key));
   const most = off.length > 0 ? -Infinity : mostWeight(bench, values, hypothesis);
-  return { hypothesis, variant, off, explains, most };
+  const offBits = off.reduce((bits, i) => bits | (1 << i), 0);
+  const moveBits = bitsOf(bench, moves);
+  return { hypothesis, variant, off, explains, values, offBits, moveBits, most };
 }
 
 /**
@@ -106,6 +113,13 @@ function replayed(
       asCandidate(search, definition, variant, slipped, ofGroup, reading, valuesOf(reading), which) ?? []
     );
   });
+}
+
+/** Quantities as bits in the order of the fields. */
+export function bitsOf(bench: Bench, keys: Iterable<QuantityKey>): number {
+  let bits = 0;
+  for (const key of keys) bits |= 1 << bench.fields.findIndex((f) => f.key === key);
+  return bits;
 }
 
 /** Fields whose number lies beyond the range of the samples, widened. */

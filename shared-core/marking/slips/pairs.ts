@@ -1,7 +1,8 @@
-import { slipNamed } from './catalogue.ts';
-import { candidatesOf, type Candidate } from './candidates.ts';
+import type { DeriveContext } from '../../reference/methods/derive.ts';
+import { reportingSlips } from './catalogue-reporting.ts';
+import { bitsOf, candidatesOf, type Candidate } from './candidates.ts';
 import { misfits, mostWeight } from './hypothesis.ts';
-import { predict, withSlips } from './predict.ts';
+import { predict, withSlips, writtenWith } from './predict.ts';
 import { priors } from './priors.ts';
 import { canMatter, plain, type Search } from './search.ts';
 
@@ -28,33 +29,40 @@ export function takePairs(search: Search, candidates: readonly Candidate[]): voi
     mostOutOfReach: bench.fields.length - 1,
   });
   const seconds = [...candidates.filter((c) => c.variant.replay === undefined), ...replays];
-  const unexplained = new Map(found.map((w) => [w.hypothesis, w.unexplained]));
+  const unexplained = new Map(found.map((w) => [w.hypothesis, bitsOf(bench, w.unexplained)]));
   for (const first of firsts) {
-    const open = unexplained.get(first.hypothesis) ?? first.off.map((i) => bench.fields[i]!.key);
+    const open = unexplained.get(first.hypothesis) ?? 0;
+    const context = first.hypothesis.reading.context(first.hypothesis.reading.mean);
     for (const second of seconds) {
-      // A second cause has to touch what the first leaves open.
-      if (open.length > 0 && !open.some((key) => second.hypothesis.causes[0]!.moves!.has(key))) continue;
-      tryPair(search, first, second);
+      // A second cause has to move all that the first plainly leaves open, and something of what it leaves unexplained.
+      if ((second.moveBits & first.offBits) !== first.offBits) continue;
+      if (open !== 0 && (second.moveBits & open) === 0) continue;
+      tryPair(search, first, second, context);
     }
   }
 }
 
-function tryPair(search: Search, first: Candidate, second: Candidate): void {
+function tryPair(search: Search, first: Candidate, second: Candidate, context: DeriveContext): void {
   const { input, bench } = search;
   const [a, b] = [first.hypothesis.causes[0]!, second.hypothesis.causes[0]!];
   if (a.code === b.code || !canCombine(first, second)) return;
+  const firstIsWriting = isReporting(a.code);
+  const { variant } = second;
+  const onlyWritten =
+    variant.replay === undefined && !variant.carried && !firstIsWriting && variant.steps !== undefined;
+  if (onlyWritten && misfits(bench, writtenWith(first.values, variant.steps, context)).length > 0) return;
   // What is written down goes wrong last.
-  const inOrder = isReporting(a.code) ? [second.variant, first.variant] : [first.variant, second.variant];
+  const inOrder = firstIsWriting ? [variant, first.variant] : [first.variant, variant];
   const slipped = withSlips(input.steps, inOrder);
-  const reading = second.variant.replay === undefined ? first.hypothesis.reading : second.hypothesis.reading;
+  const reading = variant.replay === undefined ? first.hypothesis.reading : second.hypothesis.reading;
+  const values = predict(reading.context(reading.mean), slipped);
+  if (misfits(bench, values).length > 0) return;
   const logPrior =
     first.hypothesis.logPrior +
     second.hypothesis.logPrior -
     2 * Math.log(priors.oneSlip) +
     Math.log(2 * priors.twoSlips);
   const hypothesis = plain(input, [a, b], slipped, logPrior, reading);
-  const values = predict(reading.context(reading.mean), slipped);
-  if (misfits(bench, values).length > 0) return;
   if (canMatter(search, mostWeight(bench, values, hypothesis))) search.take(hypothesis, values);
 }
 
@@ -68,6 +76,8 @@ function canCombine(first: Candidate, second: Candidate): boolean {
   return first.variant.carried !== second.variant.carried || !keys.some((key) => key in others);
 }
 
+const reporting: ReadonlySet<string> = new Set(reportingSlips.map((s) => s.code));
+
 function isReporting(code: string): boolean {
-  return slipNamed(code)?.family === 'reporting';
+  return reporting.has(code);
 }

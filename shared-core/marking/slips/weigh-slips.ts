@@ -44,7 +44,7 @@ function lookCloser(search: Search, candidates: readonly Candidate[]): void {
     for (const c of candidates) if (c.explains && c.off.length > 0) search.take(c.hypothesis);
   }
   takeOnTop(search, search.found);
-  if (settled(search)) return;
+  if (settled(search) || standingOff(search.bench) < 2) return;
   takePairs(search, candidates);
   const oneCause = search.found.filter(
     (w) => w.hypothesis.causes.length === 1 && w.hypothesis.meant.size === 0,
@@ -52,11 +52,11 @@ function lookCloser(search: Search, candidates: readonly Candidate[]): void {
   takeOnTop(search, oneCause);
 }
 
-/** True where some value stands off correct work by more than a careful reading explains. */
-function stoodOff(bench: Bench): boolean {
-  return bench.fields.some(
+/** How many values stand off correct work by more than a careful reading explains; two causes need two at least. */
+function standingOff(bench: Bench): number {
+  return bench.fields.filter(
     (f, i) => Math.abs(f.value - bench.correct.values[f.key]!) > 2.5 * bench.careful[i]!,
-  );
+  ).length;
 }
 
 /** Candidates that leave nothing plainly unexplained, from the likeliest on, until the rest cannot matter. */
@@ -71,7 +71,7 @@ function weighLikeliest(search: Search, candidates: readonly Candidate[]): void 
 /** True where correct work explains everything, and better than anything weighed so far. */
 function correctStands({ bench, best }: Search): boolean {
   const top = best();
-  return top !== null && top.hypothesis.causes.length === 0 && complete(top) && !stoodOff(bench);
+  return top !== null && top.hypothesis.causes.length === 0 && complete(top) && standingOff(bench) === 0;
 }
 
 /**
