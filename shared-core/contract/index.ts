@@ -1,0 +1,3 @@
+export * from './errors.ts';
+export * from './inputs.ts';
+export type * from './outputs.ts';
