@@ -14,8 +14,6 @@ const quote = 34;
 /** Words that instruments and spreadsheets write where they have no number. */
 const missingWords = /^(?:nan|n\/?a|#n\/a|#num!|#value!|null|none|inf|-inf|\+inf|-+|\?|\*+|\.|#+)$/i;
 
-export type RowKind = 'numbers' | 'text';
-
 /** Reused between rows: cell values of the row read last (NaN: no number there). */
 export class Row {
   readonly values = new Float64Array(1024);

@@ -8,7 +8,7 @@ import { findDips, findSpikes, resolutionOf, saturationLevel } from './features.
 import { foreignGasNotes } from './foreign-gases.ts';
 import { estimateNoise, type NoiseEstimate } from './noise.ts';
 
-export interface PrepareOptions {
+interface PrepareOptions {
   /** Overrides what reading decided. */
   readonly ordinateKind?: OrdinateKind;
   readonly fromPerCm?: number;
