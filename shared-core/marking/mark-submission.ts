@@ -106,6 +106,7 @@ function markIsotopologue(
       : weighSubmission(key, submitted, references, scheme, {
           method: best.result.method,
           sets: best.result.span.sets.map((s) => s.set),
+          asked: asked.map((a) => a.rule.key),
           originByMidpoint: originByMidpoint(values, chosen, best),
           stepPerCm: key.source === null ? null : (options.stepPerCmOf?.(key.source.file) ?? null),
           ownLines: ownLinesOf(submission, isotopologue, isotopologues),

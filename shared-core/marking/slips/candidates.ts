@@ -1,8 +1,8 @@
-import { derive, type Values } from '../../reference/methods/derive.ts';
+import { derive, type DeriveContext, type Values } from '../../reference/methods/derive.ts';
 import type { QuantityKey } from '../../units/types.ts';
 import { slipCatalogue } from './catalogue.ts';
 import type { SlipDefinition, SlipVariant } from './definition.ts';
-import { misfits, mostWeight, type Bench, type Hypothesis } from './hypothesis.ts';
+import { isMisfit, misfits, mostWeight, type Bench, type Hypothesis } from './hypothesis.ts';
 import { predict, withSlips, writtenWith } from './predict.ts';
 import { priors, shareOf } from './priors.ts';
 import type { Reading } from './reading.ts';
@@ -36,7 +36,7 @@ export interface WhichWays {
 /** Every way of every slip that is not plainly out of the question. */
 export function candidatesOf(search: Search, which: WhichWays): Candidate[] {
   const total = slipCatalogue.reduce((sum, d) => sum + d.weight, 0);
-  const { input } = search;
+  const { input, bench } = search;
   const context = input.reading.context(input.reading.mean);
   // What most ways start from: they change only what is written down.
   const unslipped = derive(context, input.steps);
@@ -48,6 +48,7 @@ export function candidatesOf(search: Search, which: WhichWays): Candidate[] {
         return which.replays === 'none' ? [] : replayed(search, definition, variant, logPrior, which);
       }
       if (which.replays === 'only') return [];
+      if (which.complete && !variant.carried && plainlyOff(bench, variant, unslipped, context)) return [];
       const slipped = withSlips(input.steps, [variant]);
       const values =
         variant.carried || variant.steps === undefined
@@ -56,6 +57,21 @@ export function candidatesOf(search: Search, which: WhichWays): Candidate[] {
       return asCandidate(search, definition, variant, slipped, logPrior, input.reading, values, which) ?? [];
     });
   });
+}
+
+/** True where a value that the slip writes down is plainly not the one handed in; quicker than the whole prediction. */
+function plainlyOff(
+  bench: Bench,
+  { steps }: SlipVariant,
+  unslipped: Values,
+  context: DeriveContext,
+): boolean {
+  for (const key in steps) {
+    const quantity = key as QuantityKey;
+    const value = steps[quantity]?.(unslipped, context);
+    if (value != null && Number.isFinite(value) && isMisfit(bench, quantity, value)) return true;
+  }
+  return false;
 }
 
 function asCandidate(
@@ -107,7 +123,7 @@ function replayed(
   const ofGroup = logPrior - Math.log(input.groups);
   return Array.from({ length: input.groups }, (_, g) => g).flatMap((g) => {
     const sample = input.replayed(variant, g, true);
-    if (sample === null || misfits(bench, valuesOf(sample)).length > which.mostOutOfReach + 2) return [];
+    if (sample === null || misfits(bench, valuesOf(sample)).length > which.mostOutOfReach + 1) return [];
     const reading = input.replayed(variant, g, false) ?? sample;
     return (
       asCandidate(search, definition, variant, slipped, ofGroup, reading, valuesOf(reading), which) ?? []

@@ -49,6 +49,8 @@ export interface Weighed {
 
 /** The submission against which hypotheses are weighed. */
 export interface Bench {
+  /** Quantities asked for and not handed in. */
+  readonly notGiven: readonly QuantityKey[];
   readonly fields: readonly Field[];
   /** Correct work: values, and the standard deviation of each field with a generous reading error. */
   readonly correct: LinearPrediction;
@@ -69,6 +71,8 @@ const windowSigmas = 7;
 const mostUnexplained = 2;
 /** ln of the share of students who hand in a value that their own method does not yield. */
 const logExtraValue = Math.log(0.1);
+/** ln of the share who leave a value blank that their own method yields. */
+const logLeftBlank = Math.log(0.1);
 /** A careful reading of a line, cm-1 (common practice). */
 const carefulPerCm = 0.05;
 /** ln of the share of copied numbers that keep just these digits. */
@@ -79,6 +83,7 @@ export function benchOf(
   reading: Reading,
   base: SlippedSteps,
   errors: readonly ReadingError[],
+  notGiven: readonly QuantityKey[] = [],
 ): Bench | null {
   const predicted = predict(reading.context(reading.mean), base);
   const known = fields.filter((f) => predicted[f.key] !== undefined);
@@ -88,6 +93,7 @@ export function benchOf(
   const smallest = Math.min(...errors.map((e) => e.perCm));
   const exact = known.map((f) => ({ ...f, value: correct.values[f.key]! }));
   return {
+    notGiven,
     fields: known,
     correct,
     levels: errors.map((error) => ({
@@ -104,6 +110,17 @@ export function benchOf(
     ),
     correctReading: reading,
   };
+}
+
+/** True where a number of this quantity was handed in and is plainly not this value. */
+export function isMisfit(bench: Bench, key: QuantityKey, value: number): boolean {
+  for (let i = 0; i < bench.fields.length; i++) {
+    const f = bench.fields[i]!;
+    if (f.key !== key) continue;
+    const scale = Math.max(1, Math.abs(value / bench.correct.values[key]!));
+    return Math.abs(f.value - value) > windowSigmas * bench.generous[i]! * scale;
+  }
+  return false;
 }
 
 /** Fields whose number is plainly not what the values say. */
@@ -203,6 +220,7 @@ function weighWithout(
   without: ReadonlySet<number>,
 ): Weighed {
   let logWeight = hypothesis.logPrior;
+  for (const key of bench.notGiven) if (predicted[key] !== undefined) logWeight += logLeftBlank;
   const active: Field[] = [];
   bench.fields.forEach((f, i) => {
     const expected = bench.correct.values[f.key]!;

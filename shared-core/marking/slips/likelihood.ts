@@ -111,7 +111,7 @@ export function standardDeviations(
       fixed[i * n + i]! +
         readingErrorPerCm ** 2 * perUnit[i * n + i]! +
         f.roundingVariance +
-        (2e-4 * prediction.values[f.key]!) ** 2,
+        (f.computed ? (2e-4 * prediction.values[f.key]!) ** 2 : 0),
     ),
   );
 }

@@ -8,6 +8,9 @@ import { meantNumbers } from './written-slips.ts';
 /** Slips of the pen and handbook values, on top of accounts that leave just such numbers unexplained. */
 export function takeOnTop(search: Search, of: readonly Weighed[]): void {
   const { input, bench, take } = search;
+  const fromHandbook = bench.fields
+    .filter((f) => matchesHandbook(f, input.handbook[f.key]))
+    .map((f) => f.key);
   const most = of
     .filter((w) => w.unexplained.length > 0)
     .sort((a, b) => b.logWeight - a.logWeight)
@@ -18,7 +21,7 @@ export function takeOnTop(search: Search, of: readonly Weighed[]): void {
       const field = bench.fields[i]!;
       const expected = predicted[key];
       if (expected === undefined) continue;
-      if (matchesHandbook(field, input.handbook[key])) take(copiedOnTop(hypothesis, key));
+      if (fromHandbook.includes(key)) take(copiedOnTop(hypothesis, fromHandbook));
       for (const meant of meantNumbers(field)) {
         const off = Math.abs(meant.value - expected);
         // What is no nearer than the number as it stands is no slip of the pen.
@@ -36,11 +39,11 @@ export function takeOnTop(search: Search, of: readonly Weighed[]): void {
   }
 }
 
-function copiedOnTop(hypothesis: Hypothesis, key: QuantityKey): Hypothesis {
+function copiedOnTop(hypothesis: Hypothesis, keys: readonly QuantityKey[]): Hypothesis {
   return {
     ...hypothesis,
     causes: [...hypothesis.causes, { code: 'value-from-literature', formula: 'handbook value' }],
     logPrior: hypothesis.logPrior + Math.log(priors.handbook),
-    copied: new Set([...hypothesis.copied, key]),
+    copied: new Set([...hypothesis.copied, ...keys]),
   };
 }

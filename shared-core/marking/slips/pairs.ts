@@ -26,7 +26,7 @@ export function takePairs(search: Search, candidates: readonly Candidate[]): voi
   const replays = candidatesOf(search, {
     replays: 'only',
     complete: false,
-    mostOutOfReach: bench.fields.length - 1,
+    mostOutOfReach: Math.max(1, bench.fields.length - 3),
   });
   const seconds = [...candidates.filter((c) => c.variant.replay === undefined), ...replays];
   const unexplained = new Map(found.map((w) => [w.hypothesis, bitsOf(bench, w.unexplained)]));

@@ -9,6 +9,8 @@ import type { Reading } from './reading.ts';
 /** Everything that the weighing of one isotopologue's values needs. */
 export interface WeighInput {
   readonly fields: readonly Field[];
+  /** Quantities asked for and not handed in. */
+  readonly notGiven: readonly QuantityKey[];
   /** Reading of correct lines. */
   readonly reading: Reading;
   /** The catalogue with the ways in which each slip can have happened here. */
@@ -40,7 +42,7 @@ export interface Search {
 }
 
 /** ln of the odds beyond which an account is not worth weighing; generous, since the most it can weigh is only about known. */
-const cannotMatter = 14;
+const cannotMatter = 11;
 
 export function startSearch(input: WeighInput, bench: Bench): Search {
   const found: Weighed[] = [];

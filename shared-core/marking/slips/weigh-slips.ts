@@ -17,7 +17,7 @@ export interface Verdict {
 /** Weighs correct work, every slip of the catalogue, pairs of them, handbook values and unknown causes against each other. */
 export function weighSlips(input: WeighInput): Verdict | null {
   const base = withSlips(input.steps, []);
-  const bench = benchOf(input.fields, input.reading, base, input.errors);
+  const bench = benchOf(input.fields, input.reading, base, input.errors, input.notGiven);
   if (bench === null) return null;
   const search = startSearch(input, bench);
   search.take(plain(input, [], base, Math.log(priors.correct)));

@@ -23,6 +23,8 @@ export interface WeighOptions {
   /** Method under which the values agree best. */
   readonly method: PrescribedMethod;
   readonly sets: readonly LineSet[];
+  /** Quantities that the scheme asks for. */
+  readonly asked: readonly QuantityKey[];
   /** True where the origin was accepted as the midpoint of R(0) and P(1) beside another method. */
   readonly originByMidpoint: boolean;
   /** Step of the file's abscissa, cm-1; null where unknown. */
@@ -113,6 +115,7 @@ function weighFrom(
   };
   return weighSlips({
     fields,
+    notGiven: options.asked.filter((k) => !fields.some((f) => f.key === k)),
     reading,
     ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
     groups: groups.length,
