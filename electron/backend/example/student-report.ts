@@ -38,18 +38,20 @@ function written(value: number, figures: number): string {
   return text;
 }
 
-/** Two neighbouring, unequal digits exchanged within the first four figures. */
+/** Two neighbouring, unequal digits exchanged, where it changes the value by more than a hundredth. */
 function swapDigits(text: string, random: Random): string {
   const places = [...text.matchAll(/\d(?=\.?\d)/g)]
     .map((match) => match.index)
     .filter((i) => i < 5)
     .map((i) => [i, text[i + 1] === '.' ? i + 2 : i + 1] as const)
     .filter(([i, j]) => text[i] !== text[j] && /\d/.test(text[j] ?? '') && !(i === 0 && text[j] === '0'));
-  if (places.length === 0) return text;
-  const [i, j] = random.pick(places);
-  const characters = Array.from(text);
-  [characters[i], characters[j]] = [characters[j]!, characters[i]!];
-  return characters.join('');
+  const swapped = places.map(([i, j]) => {
+    const characters = Array.from(text);
+    [characters[i], characters[j]] = [characters[j]!, characters[i]!];
+    return characters.join('');
+  });
+  const visible = swapped.filter((each) => Math.abs(Number(each) / Number(text) - 1) > 0.01);
+  return visible.length === 0 ? text : random.pick(visible);
 }
 
 function swapFields(values: StudentValues, random: Random): StudentValues {
@@ -76,7 +78,8 @@ export function writeDown(
   if (slips.has('fields-swapped')) values = swapFields(values, random);
   const keys = course.quantities.filter((key) => values[key] !== undefined);
   const shifted = random.pick(keys.filter((key) => key !== 'nu0' && key !== 'omegaE'));
-  const mixed = random.pick(keys);
+  // Not D: its last digits are open anyway.
+  const mixed = random.pick(keys.filter((key) => key !== 'D'));
   const power = random.pick([-2, -1, 1, 2, 3]);
   return Object.fromEntries(
     keys.map((key) => {
