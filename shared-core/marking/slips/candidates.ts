@@ -93,7 +93,10 @@ function asCandidate(
   // A slip all of whose effects are plainly not there explains nothing, alone or in a pair.
   const explains =
     off.length === 0 || [...moves].some((key) => !off.some((i) => bench.fields[i]!.key === key));
-  const most = off.length > 0 ? -Infinity : mostWeight(bench, values, hypothesis);
+  const most =
+    off.length > 0
+      ? -Infinity
+      : mostWeight(bench, values, hypothesis, which.complete && variant.replay === undefined);
   const offBits = off.reduce((bits, i) => bits | (1 << i), 0);
   const moveBits = bitsOf(bench, moves);
   return { hypothesis, variant, off, explains, values, offBits, moveBits, most };

@@ -2,6 +2,8 @@ import type { Values } from '../../reference/methods/derive.ts';
 import type { QuantityKey } from '../../units/types.ts';
 import type { Field } from './fields.ts';
 import {
+  chiSquared,
+  covarianceFactor,
   linearise,
   logProbability,
   standardDeviations,
@@ -62,6 +64,8 @@ export interface Bench {
     readonly logPrior: number;
     readonly deviations: readonly number[];
     readonly logPeak: number;
+    /** Cholesky factor of their covariance. */
+    readonly factor: Float64Array | null;
   }[];
   readonly correctReading: Reading;
 }
@@ -99,6 +103,7 @@ export function benchOf(
     levels: errors.map((error) => ({
       logPrior: Math.log(error.prior),
       deviations: standardDeviations(known, correct, reading, error.perCm),
+      factor: covarianceFactor(known, correct, reading, error.perCm),
       logPeak: logProbability(exact, correct, reading, [{ ...error, prior: 1 }]),
     })),
     generous: standardDeviations(known, correct, reading, largest),
@@ -144,29 +149,49 @@ export function misfits(
 }
 
 /**
- * About the most that a hypothesis can weigh: for each reading error the peak of the density of correct work, less half the square of
+ * About the most that a hypothesis can weigh: for each reading error the peak of the density of correct work, less half of the square of
  * the worst single deviation. Cheap, and good enough to decide what is worth weighing.
+ *
+ * @param close true where correct work fits: then what competes with it scatters as it does, and chi squared with the covariance of
+ * correct work takes the place of the worst deviation.
  */
-export function mostWeight(bench: Bench, values: Values, hypothesis: Hypothesis): number {
+export function mostWeight(bench: Bench, values: Values, hypothesis: Hypothesis, close = false): number {
+  const { fields, correct, levels } = bench;
+  const off: number[] = [];
+  let sameScale = true;
+  for (const f of fields) {
+    const predicted = values[f.key];
+    const ratio = predicted === undefined ? 1 : predicted / correct.values[f.key]!;
+    sameScale &&= ratio > 0.8 && ratio < 1.25;
+    off.push(predicted === undefined ? 0 : f.value - predicted);
+  }
   let most = -Infinity;
-  for (const { logPrior, deviations, logPeak } of bench.levels) {
-    let worst = 0;
-    let sharper = 0;
-    for (let i = 0; i < bench.fields.length; i++) {
-      const f = bench.fields[i]!;
-      const predicted = values[f.key];
-      if (predicted === undefined) continue;
-      // A value at another scale scatters at that scale, down to its last digit.
-      const ratio = Math.abs(predicted / bench.correct.values[f.key]!);
-      const rounding = Math.sqrt(f.roundingVariance);
-      const model = Math.sqrt(Math.max(deviations[i]! ** 2 - f.roundingVariance, 0));
-      const deviation = Math.hypot(model * ratio, rounding);
-      worst = Math.max(worst, Math.abs(f.value - predicted) / deviation);
-      sharper += Math.log(deviations[i]! / deviation);
-    }
-    most = Math.max(most, logPrior + logPeak + sharper - 0.5 * worst * worst);
+  for (const { logPrior, deviations, logPeak, factor } of levels) {
+    const fit =
+      close && sameScale && factor !== null
+        ? -0.5 * chiSquared(factor, off)
+        : fitOfWorst(bench, values, deviations);
+    most = Math.max(most, logPrior + logPeak + fit);
   }
   return hypothesis.logPrior + most;
+}
+
+/** The worst single deviation, and how much sharper the density is where values scatter at another scale. */
+function fitOfWorst(bench: Bench, values: Values, deviations: readonly number[]): number {
+  let worst = 0;
+  let sharper = 0;
+  for (let i = 0; i < bench.fields.length; i++) {
+    const f = bench.fields[i]!;
+    const predicted = values[f.key];
+    if (predicted === undefined) continue;
+    // A value at another scale scatters at that scale, down to its last digit.
+    const ratio = Math.abs(predicted / bench.correct.values[f.key]!);
+    const model = Math.sqrt(Math.max(deviations[i]! ** 2 - f.roundingVariance, 0));
+    const deviation = Math.hypot(model * ratio, Math.sqrt(f.roundingVariance));
+    worst = Math.max(worst, Math.abs(f.value - predicted) / deviation);
+    sharper += Math.log(deviations[i]! / deviation);
+  }
+  return sharper - 0.5 * worst * worst;
 }
 
 /** By how much ln of the probability would rise if every number stood exactly where the account puts it. */

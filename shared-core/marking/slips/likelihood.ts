@@ -148,24 +148,65 @@ function project(gradient: readonly Float64Array[], covariance: Float64Array, p:
 /** ln of the normal density with covariance V (lower triangle, overwritten by its Cholesky factor) at `off`. */
 function logGaussian(v: Float64Array, off: readonly number[]): number {
   const n = off.length;
-  const z = new Float64Array(n);
+  const logDet = factorise(v, n);
+  if (logDet === null) return -Infinity;
+  return -0.5 * (chiSquared(v, off) + logDet + n * Math.log(2 * Math.PI));
+}
+
+/** Cholesky factor in place of the lower triangle; ln of the determinant, null where V is not positive definite. */
+function factorise(v: Float64Array, n: number): number | null {
   let logDet = 0;
-  let chi = 0;
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) {
       let sum = v[i * n + j]!;
       for (let k = 0; k < j; k++) sum -= v[i * n + k]! * v[j * n + k]!;
       if (j < i) v[i * n + j] = sum / v[j * n + j]!;
       else {
-        if (!(sum > 0)) return -Infinity;
+        if (!(sum > 0)) return null;
         v[i * n + i] = Math.sqrt(sum);
+        logDet += Math.log(sum);
       }
     }
-    let sum = off[i]!;
-    for (let k = 0; k < i; k++) sum -= v[i * n + k]! * z[k]!;
-    z[i] = sum / v[i * n + i]!;
-    logDet += 2 * Math.log(v[i * n + i]!);
-    chi += z[i]! ** 2;
   }
-  return -0.5 * (chi + logDet + n * Math.log(2 * Math.PI));
+  return logDet;
+}
+
+const scratch = new Float64Array(32);
+
+/** offᵀ V⁻¹ off from the Cholesky factor of V. */
+export function chiSquared(factor: Float64Array, off: readonly number[]): number {
+  const n = off.length;
+  const z = n <= scratch.length ? scratch : new Float64Array(n);
+  let chi = 0;
+  for (let i = 0; i < n; i++) {
+    let sum = off[i]!;
+    for (let k = 0; k < i; k++) sum -= factor[i * n + k]! * z[k]!;
+    const one = sum / factor[i * n + i]!;
+    z[i] = one;
+    chi += one * one;
+  }
+  return chi;
+}
+
+/** Cholesky factor of the covariance of some fields for one reading error, with the wider blur; null where there is none. */
+export function covarianceFactor(
+  fields: readonly Field[],
+  prediction: LinearPrediction,
+  reading: Reading,
+  readingErrorPerCm: number,
+): Float64Array | null {
+  const n = fields.length;
+  const { fixed, reading: unit } = reading.covariances();
+  const v = project(prediction.gradient, fixed, reading.mean.length);
+  const perUnit = project(prediction.gradient, unit, reading.mean.length);
+  const widest = Math.max(...computingBlur.map((b) => b.relative));
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j <= i; j++) v[i * n + j]! += readingErrorPerCm ** 2 * perUnit[i * n + j]!;
+    const f = fields[i]!;
+    v[i * n + i]! +=
+      f.roundingVariance +
+      (f.computed ? (widest * prediction.values[f.key]!) ** 2 : 0) +
+      (1e-7 * f.value) ** 2;
+  }
+  return factorise(v, n) === null ? null : v;
 }
