@@ -54,7 +54,8 @@ export function candidatesOf(search: Search, which: WhichWays): Candidate[] {
         variant.carried || variant.steps === undefined
           ? predict(context, slipped)
           : writtenWith(unslipped, variant.steps, context);
-      return asCandidate(search, definition, variant, slipped, logPrior, input.reading, values, which) ?? [];
+      const reading = variant.readsOneLine === true ? input.oneLineReading : input.reading;
+      return asCandidate(search, definition, variant, slipped, logPrior, reading, values, which) ?? [];
     });
   });
 }

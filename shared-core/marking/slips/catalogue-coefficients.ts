@@ -108,18 +108,33 @@ export const coefficientSlips: readonly SlipDefinition[] = [
         ),
       ),
   },
-  simple('origin-midpoint', 1.5, 'ν̃0 was taken as the middle of R(0) and P(1)', 'ν̃0 − αe', {
-    nu0: (_, c) => sum(c.read.nu0, c.read.Bn, minus(c.read.B0)),
-  }),
+  {
+    code: 'origin-midpoint',
+    family: 'coefficients',
+    weight: 1.5,
+    what: 'ν̃0 was taken as the middle of R(0) and P(1)',
+    variants: () =>
+      // Half the sum of two lines: their errors add to 1/√2 of one.
+      oneLine(
+        bothWays('ν̃0 − αe', {
+          nu0: (_, c) => sum(c.read.nu0, c.read.Bn, minus(c.read.B0), Math.SQRT1_2 * (c.oneLine ?? 0)),
+        }),
+      ),
+  },
   {
     code: 'origin-line',
     family: 'coefficients',
     weight: 1.5,
     what: 'A line was taken for the band origin',
-    variants: () => [
-      ...bothWays('R(0) = ν̃0 + 2B_1', { nu0: (_, c) => sum(c.read.nu0, c.read.Bn, c.read.Bn) }),
-      ...bothWays('P(1) = ν̃0 − 2B_0', { nu0: (_, c) => sum(c.read.nu0, minus(c.read.B0), minus(c.read.B0)) }),
-    ],
+    variants: () =>
+      oneLine([
+        ...bothWays('R(0) = ν̃0 + 2B_1', {
+          nu0: (_, c) => sum(c.read.nu0, c.read.Bn, c.read.Bn, c.oneLine ?? 0),
+        }),
+        ...bothWays('P(1) = ν̃0 − 2B_0', {
+          nu0: (_, c) => sum(c.read.nu0, minus(c.read.B0), minus(c.read.B0), c.oneLine ?? 0),
+        }),
+      ]),
   },
   {
     code: 'branch-in-j',
@@ -192,6 +207,10 @@ const meanB: Step = (_, c) => {
   const twice = sum(c.read.B0, c.read.Bn);
   return twice === null ? null : twice / 2;
 };
+
+function oneLine(variants: readonly SlipVariant[]): SlipVariant[] {
+  return variants.map((v) => ({ ...v, readsOneLine: true }));
+}
 
 function simple(code: string, weight: number, what: string, formula: string, steps: Steps): SlipDefinition {
   return { code, family: 'coefficients', weight, what, variants: () => bothWays(formula, steps) };

@@ -41,6 +41,8 @@ export interface SlipVariant {
   readonly replay?: (lines: readonly MethodLine[]) => ReplayedLines | null;
   readonly steps?: Steps;
   readonly carried: boolean;
+  /** True where a step reads a single line, whose error the fit does not average out. */
+  readonly readsOneLine?: boolean;
   /** How often this way is met beside the others of the same slip; 1 where absent. */
   readonly often?: number;
 }

@@ -18,10 +18,10 @@ const computingBlur = [
 /** Reading errors where nothing is known of the file's sampling: from a peak fit to a ruler. */
 export const unknownReadingErrors: readonly ReadingError[] = [
   { perCm: 0.01, prior: 0.2 },
-  { perCm: 0.03, prior: 0.25 },
-  { perCm: 0.1, prior: 0.3 },
-  { perCm: 0.25, prior: 0.2 },
-  { perCm: 0.6, prior: 0.05 },
+  { perCm: 0.03, prior: 0.3 },
+  { perCm: 0.1, prior: 0.37 },
+  { perCm: 0.25, prior: 0.11 },
+  { perCm: 0.6, prior: 0.02 },
 ];
 
 /** Reading errors about a known one (scheme or sampling). */

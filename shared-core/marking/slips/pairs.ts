@@ -4,6 +4,7 @@ import { bitsOf, candidatesOf, type Candidate } from './candidates.ts';
 import { misfits, mostWeight } from './hypothesis.ts';
 import { predict, withSlips, writtenWith } from './predict.ts';
 import { priors } from './priors.ts';
+import { withOneLine } from './reading.ts';
 import { canMatter, plain, type Search } from './search.ts';
 
 /** First causes that are tried with every second one. */
@@ -62,7 +63,8 @@ function tryPair(search: Search, first: Candidate, second: Candidate, context: D
     second.hypothesis.logPrior -
     2 * Math.log(priors.oneSlip) +
     Math.log(2 * priors.twoSlips);
-  const hypothesis = plain(input, [a, b], slipped, logPrior, reading);
+  const needsOneLine = variant.readsOneLine === true && first.variant.readsOneLine !== true;
+  const hypothesis = plain(input, [a, b], slipped, logPrior, needsOneLine ? withOneLine(reading) : reading);
   if (canMatter(search, mostWeight(bench, values, hypothesis))) search.take(hypothesis, values);
 }
 

@@ -79,6 +79,26 @@ export function readingOf(
   return { context: first.context, mean, covariances: () => (known ??= covariancesOf(stacks, mean)) };
 }
 
+/** The same reading with the error of one single line beside it, for steps that read a line and not the fit. */
+export function withOneLine(reading: Reading): Reading {
+  const p = reading.mean.length;
+  const grown = (covariance: Float64Array, last: number): Float64Array => {
+    const out = new Float64Array((p + 1) ** 2);
+    for (let i = 0; i < p; i++) for (let j = 0; j < p; j++) out[i * (p + 1) + j] = covariance[i * p + j]!;
+    out[(p + 1) ** 2 - 1] = last;
+    return out;
+  };
+  let known: ReadingCovariances | null = null;
+  return {
+    mean: [...reading.mean, 0],
+    context: (values) => ({ ...reading.context(values), oneLine: values[p]! }),
+    covariances: () => {
+      const { fixed, reading: unit } = reading.covariances();
+      return (known ??= { fixed: grown(fixed, 0), reading: grown(unit, 1) });
+    },
+  };
+}
+
 function covariancesOf(stacks: readonly StackedPrimitives[], mean: readonly number[]): ReadingCovariances {
   const p = mean.length;
   const fixed = new Float64Array(p * p);

@@ -13,6 +13,8 @@ export interface WeighInput {
   readonly notGiven: readonly QuantityKey[];
   /** Reading of correct lines. */
   readonly reading: Reading;
+  /** The same with the error of a single line beside it. */
+  readonly oneLineReading: Reading;
   /** The catalogue with the ways in which each slip can have happened here. */
   readonly ways: readonly {
     readonly definition: SlipDefinition;

@@ -14,7 +14,7 @@ import type { SlipSurroundings, SlipVariant } from './definition.ts';
 import { fieldsOf, type Field } from './fields.ts';
 import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
 import { lineTableVerdict, type LineTableVerdict } from './line-table.ts';
-import { readingOf, representativeSets, setsByNumber, type Reading } from './reading.ts';
+import { readingOf, representativeSets, setsByNumber, withOneLine, type Reading } from './reading.ts';
 import { weighSlips, type Verdict } from './weigh-slips.ts';
 import { isotopologue as isotopologueNamed } from '../../molecule/isotopologue.ts';
 
@@ -98,8 +98,10 @@ function weighFrom(
   options: WeighOptions,
   surroundings: SlipSurroundings,
 ): Verdict | null {
-  const reading = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
-  if (reading === null) return null;
+  const fitted = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
+  if (fitted === null) return null;
+  const oneLineReading = withOneLine(fitted);
+  const reading = options.originByMidpoint ? oneLineReading : fitted;
   const groups = setsByNumber(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
   const replayed = (variant: SlipVariant, group: number, sample: boolean): Reading | null => {
@@ -117,6 +119,7 @@ function weighFrom(
     fields,
     notGiven: options.asked.filter((k) => !fields.some((f) => f.key === k)),
     reading,
+    oneLineReading,
     ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
     groups: groups.length,
     replayed,
@@ -135,10 +138,10 @@ const tableErrors: readonly ReadingError[] = [
 ];
 
 /** ν̃0 by the midpoint lies αe below the fitted one. */
-const midpointOrigin: Step = (_, { read }) =>
+const midpointOrigin: Step = (_, { read, oneLine }) =>
   read.nu0 === undefined || read.B0 === undefined || read.Bn === undefined
     ? null
-    : read.nu0 + read.Bn - read.B0;
+    : read.nu0 + read.Bn - read.B0 + Math.SQRT1_2 * (oneLine ?? 0);
 
 /** The scheme's reading error; else about a third of the abscissa step; else the whole range from peak fit to ruler. */
 function readingErrors(scheme: MarkingScheme, options: WeighOptions): readonly ReadingError[] {

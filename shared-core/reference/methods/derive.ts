@@ -18,6 +18,8 @@ export interface DeriveContext {
   readonly overtone: Readonly<Partial<Record<PrimitiveKey, number>>> | null;
   /** Fundamental of the isotopologue with the other hydrogen, where the submission has it. */
   readonly partner: { readonly nu0: number; readonly reducedMassU: number } | null;
+  /** Error of a single line, cm-1, where a step reads one line and not the fit; 0 where absent. */
+  readonly oneLine?: number;
 }
 
 /** One step of the derivation: a quantity from those before it; null where it does not exist. */
