@@ -105,7 +105,7 @@ function asCandidate(
 
 /**
  * A replay in every group of line sets, unless the values at the least, the middle and the largest number of lines already show that no
- * number in between can fit; each group by its first set before the others are worked out. Most of the cost of weighing lies here.
+ * number in between can fit. Most of the cost of weighing lies here.
  */
 function replayed(
   search: Search,
@@ -120,18 +120,17 @@ function replayed(
   const last = input.groups - 1;
   const coarse = [...new Set([0, Math.floor(last / 2), last])];
   const samples = coarse.flatMap((g) => {
-    const reading = input.replayed(variant, g, true);
+    const reading = input.replayed(variant, g);
     return reading === null ? [] : [valuesOf(reading)];
   });
   if (samples.length === 0 || outOfReach(bench, samples) > which.mostOutOfReach) return [];
   const ofGroup = logPrior - Math.log(input.groups);
   return Array.from({ length: input.groups }, (_, g) => g).flatMap((g) => {
-    const sample = input.replayed(variant, g, true);
-    if (sample === null || misfits(bench, valuesOf(sample)).length > which.mostOutOfReach + 1) return [];
-    const reading = input.replayed(variant, g, false) ?? sample;
-    return (
-      asCandidate(search, definition, variant, slipped, ofGroup, reading, valuesOf(reading), which) ?? []
-    );
+    const reading = input.replayed(variant, g);
+    if (reading === null) return [];
+    const values = valuesOf(reading);
+    if (misfits(bench, values).length > which.mostOutOfReach) return [];
+    return asCandidate(search, definition, variant, slipped, ofGroup, reading, values, which) ?? [];
   });
 }
 

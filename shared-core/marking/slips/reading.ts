@@ -40,15 +40,27 @@ export function representativeSets(sets: readonly LineSet[]): LineSet[] {
   );
 }
 
-/** Sets grouped by their number of lines, each group cut to three: for replays, which depend much on that number. */
-export function setsByNumber(sets: readonly LineSet[]): LineSet[][] {
-  const groups = new Map<number, LineSet[]>();
-  for (const set of sets) {
-    const group = groups.get(set.lines.length) ?? [];
-    if (group.length < 3) group.push(set);
-    groups.set(set.lines.length, group);
+/** Branches further out of balance than this are left to the scatter among sets: replays look at the likely ones. */
+const largestImbalance = 2;
+const mostGroups = 60;
+
+/**
+ * Sets for replays, each by itself: what wrong numbering gives depends much on the numbers of P and R lines, so no mean over sets will
+ * do. Balanced sets, by number of lines; those of the fullest balance alone where there would be too many.
+ */
+export function groupsForReplays(sets: readonly LineSet[]): LineSet[][] {
+  const imbalance = ({ lines }: LineSet): number =>
+    Math.abs(lines.reduce((sum, l) => sum + Math.sign(l.m), 0));
+  const least = Math.min(...sets.map(imbalance));
+  for (let allowed = Math.max(largestImbalance, least); allowed > least; allowed--) {
+    const chosen = sets.filter((s) => imbalance(s) <= allowed);
+    if (chosen.length <= mostGroups) return sorted(chosen);
   }
-  return [...groups.values()];
+  return sorted(sets.filter((s) => imbalance(s) === least).slice(0, mostGroups));
+}
+
+function sorted(sets: readonly LineSet[]): LineSet[][] {
+  return [...sets].sort((a, b) => b.lines.length - a.lines.length).map((s) => [s]);
 }
 
 /**

@@ -22,8 +22,8 @@ export interface WeighInput {
   }[];
   /** Number of groups of line sets, by number of lines; a replay depends much on that number. */
   readonly groups: number;
-  /** Reading of the replayed lines of one group, or of its first set alone; null where they do not carry the method. */
-  readonly replayed: (variant: SlipVariant, group: number, sample: boolean) => Reading | null;
+  /** Reading of the replayed lines of one group; null where they do not carry the method. */
+  readonly replayed: (variant: SlipVariant, group: number) => Reading | null;
   readonly errors: readonly ReadingError[];
   readonly surroundings: SlipSurroundings;
   /** Correct steps: the standard ones, or what an accepted method allows in their place. */

@@ -14,7 +14,7 @@ import type { SlipSurroundings, SlipVariant } from './definition.ts';
 import { fieldsOf, type Field } from './fields.ts';
 import { readingErrorsAbout, unknownReadingErrors, type ReadingError } from './likelihood.ts';
 import { lineTableVerdict, type LineTableVerdict } from './line-table.ts';
-import { readingOf, representativeSets, setsByNumber, withOneLine, type Reading } from './reading.ts';
+import { readingOf, representativeSets, groupsForReplays, withOneLine, type Reading } from './reading.ts';
 import { weighSlips, type Verdict } from './weigh-slips.ts';
 import { isotopologue as isotopologueNamed } from '../../molecule/isotopologue.ts';
 
@@ -102,17 +102,15 @@ function weighFrom(
   if (fitted === null) return null;
   const oneLineReading = withOneLine(fitted);
   const reading = options.originByMidpoint ? oneLineReading : fitted;
-  const groups = setsByNumber(sets);
+  const groups = groupsForReplays(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
-  const replayed = (variant: SlipVariant, group: number, sample: boolean): Reading | null => {
+  const replayed = (variant: SlipVariant, group: number): Reading | null => {
     const readings = known.get(variant) ?? new Map<number, Reading | null>();
     known.set(variant, readings);
-    const id = sample ? -1 - group : group;
-    const before = readings.get(id);
+    const before = readings.get(group);
     if (before !== undefined) return before;
-    const chosen = sample ? groups[group]!.slice(0, 1) : groups[group]!;
-    const fresh = readingOf(chosen, options.method, scheme, molecule, key.extra, variant.replay);
-    readings.set(id, fresh);
+    const fresh = readingOf(groups[group]!, options.method, scheme, molecule, key.extra, variant.replay);
+    readings.set(group, fresh);
     return fresh;
   };
   return weighSlips({
