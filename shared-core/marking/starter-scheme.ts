@@ -41,7 +41,7 @@ const fair: Readonly<Record<QuantityKey, Fair>> = {
   Be: relative(0.003, 0.01, 4, ['b0-as-be', 'be-plus-alpha']),
   alphaE: relative(0.03, 0.08, 3, ['alpha-half', 'alpha-double']),
   // Kratzer with a wrong B or ω moves D by 4 to 7 % only: told apart by the arithmetic, not by the tolerance.
-  D: relative(0.15, 0.4, 1, []),
+  D: relative(0.15, 0.4, 2, []),
   omegaE: relative(0.001, 0.005, 5, ['omega-is-nu0', 'omega-lost-two']),
   omegaExe: relative(0.04, 0.1, 3, ['anharmonicity-double']),
   re: relative(0.002, 0.005, 4, ['r0-as-re']),

@@ -39,18 +39,18 @@ function rawWidth(tolerance: Tolerance, value: number, combined: number): number
 /**
  * How far the rounding of a submitted number moves the limit of the accepted range.
  *
- * Positive where more figures were given than the scheme asks for: everybody gets the half digit at the least number of figures,
- * h_least. Negative where fewer were given: the number must then agree wherever in its interval the unrounded value stood.
- * So rounding harder never gains anything: the limit is tolerance + h_least − h. Zero where the figures are unknown or none are asked.
+ * Every number stands for an interval of half its last digit h on both sides. Down to the least number of figures that the scheme asks
+ * for, the interval has to meet the accepted range: limit + h. With fewer figures it has to lie inside, wherever in it the unrounded
+ * value stood: limit − h. So who rounds harder than asked gains nothing by it. Zero where the figures are unknown or none are asked.
  */
 export function roundingAllowance(
   value: number,
   halfLastDigit: number | null,
   leastFigures: number | null,
 ): number {
-  if (leastFigures === null || value === 0) return 0;
+  if (leastFigures === null || halfLastDigit === null || value === 0) return 0;
   const least = halfDigitAt(value, leastFigures);
-  return halfLastDigit === null ? 0 : least - halfLastDigit;
+  return halfLastDigit <= least * (1 + 1e-9) ? halfLastDigit : -halfLastDigit;
 }
 
 /** Half of the last digit of a number written to so many significant figures. */

@@ -108,21 +108,45 @@ describe('marking, whatever is handed in', () => {
     );
   });
 
-  it('rounding harder never gains points', () => {
+  it('rounding harder than the scheme asks never gains points', () => {
     fc.assert(
       fc.property(
         fc.constantFrom(...keys),
         fc.double({ min: 0.95, max: 1.05, noNaN: true }),
-        fc.integer({ min: 1, max: 6 }),
+        fc.integer({ min: 1, max: 3 }),
         (key, f, figures) => {
+          const rule = scheme.quantities.find((q) => q.key === key)!;
+          fc.pre(figures < rule.leastFigures!);
           const exact = correct[key]! * f;
-          const by = { ...scheme, carryForward: false };
-          const points = (text: string): number =>
-            mark(submissionOf({ [key]: text }), by).values.find((v) => v.quantity === key)!.points ?? 0;
-          expect(points(exact.toPrecision(figures))).toBeLessThanOrEqual(points(exact.toPrecision(9)));
+          expect(pointsOf(key, exact.toPrecision(figures))).toBeLessThanOrEqual(
+            pointsOf(key, exact.toPrecision(9)),
+          );
         },
       ),
-      { numRuns: 300 },
+      { numRuns: 150 },
+    );
+  });
+
+  it('down to the figures asked for, rounding gains at most where the interval of the last digit meets the limit', () => {
+    fc.assert(
+      fc.property(
+        fc.double({ min: 0.95, max: 1.05, noNaN: true }),
+        fc.integer({ min: 4, max: 6 }),
+        (f, figures) => {
+          const exact = correct.Be! * f;
+          const finer = exact * (f > 1 ? 1 - 10 ** (1 - figures) : 1 + 10 ** (1 - figures));
+          // One unit of the last digit towards the reference is more than rounding can move a value and widen its interval.
+          expect(pointsOf('Be', exact.toPrecision(figures))).toBeLessThanOrEqual(
+            Math.max(pointsOf('Be', finer.toPrecision(9)), pointsOf('Be', exact.toPrecision(9))),
+          );
+        },
+      ),
+      { numRuns: 150 },
     );
   });
 });
+
+function pointsOf(key: QuantityKey, text: string): number {
+  const marked = mark(submissionOf({ [key]: text }), { ...scheme, carryForward: false });
+  return marked.values.find((v) => v.quantity === key)!.points ?? 0;
+}
