@@ -178,7 +178,7 @@ function singleSlips(options: MarkingOptions): void {
     if (!isAlike) {
       note(
         one,
-        `offered ${result.slips.map((s) => `${s.code} ${s.probability.toFixed(2)}`).join(', ') || 'nothing'}; values ${JSON.stringify(one.work.texts)} unslipped ${JSON.stringify(one.work.unslippedTexts)}`,
+        `reference ${result.reference?.reliability ?? 'absent'}, offered ${result.slips.map((s) => `${s.code} ${s.probability.toFixed(2)}`).join(', ') || 'nothing'}; values ${JSON.stringify(one.work.texts)} unslipped ${JSON.stringify(one.work.unslippedTexts)}`,
       );
     }
   }
@@ -249,7 +249,7 @@ function doubleSlips(options: MarkingOptions): void {
     else
       note(
         one,
-        `two slips, offered ${result.slips.map((s) => `${s.code} ${s.probability.toFixed(2)}`).join(', ') || 'nothing'}; values ${JSON.stringify(one.work.texts)} unslipped ${JSON.stringify(one.work.unslippedTexts)}`,
+        `two slips, reference ${result.reference?.reliability ?? 'absent'}, offered ${result.slips.map((s) => `${s.code} ${s.probability.toFixed(2)}`).join(', ') || 'nothing'}; values ${JSON.stringify(one.work.texts)} unslipped ${JSON.stringify(one.work.unslippedTexts)}`,
       );
     const sure = result.slips.filter((slip) => slip.probability > 0.9);
     if (
