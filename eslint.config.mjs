@@ -20,7 +20,10 @@ export default tseslint.config(
     },
     rules: {
       '@typescript-eslint/restrict-template-expressions': ['error', { allowNumber: true }],
-      '@typescript-eslint/no-confusing-void-expression': ['error', { ignoreArrowShorthand: true }],
+      '@typescript-eslint/no-confusing-void-expression': [
+        'error',
+        { ignoreArrowShorthand: true, ignoreVoidReturningFunctions: true },
+      ],
       // Indexed access is checked (noUncheckedIndexedAccess); in inner numeric loops the index is known to be in range.
       '@typescript-eslint/no-non-null-assertion': 'off',
       'max-lines': ['error', { max: 400, skipBlankLines: true, skipComments: true }],

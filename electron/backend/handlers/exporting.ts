@@ -31,7 +31,7 @@ const rowsOf = (state: MarkedState): ReturnType<typeof gradesRow>[] =>
 
 /** Options without keys that are absent, as the exact optional types want them. */
 function optionsOf(input: Readonly<Record<string, unknown>>): GradesOptions {
-  return Object.fromEntries(Object.entries(input).filter(([, v]) => v !== undefined)) as GradesOptions;
+  return Object.fromEntries(Object.entries(input).filter(([, v]) => v !== undefined));
 }
 
 async function recorded(

@@ -53,21 +53,22 @@ function inflate(
 ): { name: string; bytes: Uint8Array }[] | string {
   const byName = new Map(wanted.map((e) => [e.name, e]));
   const files: { name: string; bytes: Uint8Array }[] = [];
-  let fault: string | null = null;
+  // Held in an object: it is set inside callbacks, which the compiler does not see.
+  const state: { fault: string | null } = { fault: null };
   const archive = new Unzip((file) => {
     const entry = byName.get(file.name);
-    if (entry === undefined || fault !== null) return;
+    if (entry === undefined || state.fault !== null) return;
     const parts: Uint8Array[] = [];
     let size = 0;
     file.ondata = (error, data, final) => {
       if (error !== null) {
-        fault = `“${file.name}” is damaged.`;
+        state.fault = `“${file.name}” is damaged.`;
         return;
       }
       size += data.length;
       // A header may lie about the size: what comes out counts.
       if (size > entry.size) {
-        fault = `“${file.name}” is larger than its header says.`;
+        state.fault = `“${file.name}” is larger than its header says.`;
         file.terminate();
         return;
       }
@@ -75,7 +76,7 @@ function inflate(
       if (!final) return;
       const whole = join(parts, size);
       if (size !== entry.size || crc32(whole) !== entry.crc32)
-        fault = `“${file.name}” does not match its check sum.`;
+        state.state.fault = `“${file.name}” does not match its check sum.`;
       else files.push({ name: file.name, bytes: whole });
     };
     file.start();
@@ -86,7 +87,7 @@ function inflate(
   } catch {
     return 'the archive is damaged.';
   }
-  if (fault !== null) return fault;
+  if (state.fault !== null) return state.fault;
   return files.length === wanted.length ? files : 'some entries could not be unpacked.';
 }
 

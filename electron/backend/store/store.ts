@@ -41,7 +41,7 @@ export async function startStore(options: StoreOptions): Promise<Store> {
       if ('error' in message) call?.reject(new Error(message.error));
       else call?.resolve(message.result);
     });
-    worker.on('error', (error) => {
+    worker.on('error', (error: Error) => {
       reject(error);
       for (const call of waiting.values()) call.reject(error);
       waiting.clear();
