@@ -7,6 +7,7 @@ import { checkAcrossIsotopologues } from './invariants.ts';
 import { markValues } from './mark-values.ts';
 import { observationsOf } from './observations.ts';
 import { answerKey, type AnswerKey, type NamedReference } from './prescribe.ts';
+import { columnsSwapped } from './slips/columns-swapped.ts';
 import { allFindings } from './slips/explain.ts';
 import { weighSubmission, type SubmissionVerdict } from './slips/weigh-submission.ts';
 import { ownLinesOf } from './student-lines.ts';
@@ -15,6 +16,7 @@ import type {
   MarkedValue,
   MarkingScheme,
   Observation,
+  SlipFinding,
   Submission,
   SubmittedValue,
 } from './types.ts';
@@ -62,7 +64,7 @@ export function markInParts(
     reference: source?.reference ?? null,
     prescribed: Object.fromEntries(parts.map((p) => [p.key.isotopologue, p.prescribed])),
     values,
-    slips: findings.flat(),
+    slips: [...exchangedColumns(parts), ...findings.flat()],
     observations: [
       ...parts.flatMap((p, i) => {
         const submitted = valuesOf(submission, p.key.isotopologue, isotopologues);
@@ -112,6 +114,14 @@ function markIsotopologue(
           ownLines: ownLinesOf(submission, isotopologue, isotopologues),
         });
   return { key, values, chosen, prescribed: key.methods.map((m) => m.span.constants), verdict };
+}
+
+/** Pairs of isotopologues whose values stand in each other's columns. */
+function exchangedColumns(parts: readonly MarkedPart[]): SlipFinding[] {
+  const weighed = parts.flatMap((p) =>
+    p.verdict === null ? [] : [{ isotopologue: p.key.isotopologue, verdict: p.verdict.values }],
+  );
+  return weighed.flatMap((a, i) => weighed.slice(i + 1).flatMap((b) => columnsSwapped(a, b) ?? []));
 }
 
 /** I7: the isotopologues of one submission against each other. */

@@ -1,10 +1,11 @@
 import type { MarkedPart } from './mark-submission.ts';
 import { copyingAdvice } from './observations.ts';
-import { benchOf, nothingFree, nothingMeant, weigh } from './slips/hypothesis.ts';
+import { benchOf, weigh } from './slips/hypothesis.ts';
 import { unknownReadingErrors } from './slips/likelihood.ts';
 import { shown } from './slips/numbers.ts';
 import { unslipped } from './slips/predict.ts';
 import { priors } from './slips/priors.ts';
+import { plainHypothesis } from './slips/search.ts';
 import type { MarkedSubmission, Observation } from './types.ts';
 
 /** Odds, per file compared, from which another file is mentioned: with many files some fit by chance. */
@@ -40,10 +41,10 @@ export function otherSpectrum(
       const reading = theirs.verdict.values.bench.correctReading;
       const bench = benchOf(verdict.bench.fields, reading, unslipped, unknownReadingErrors);
       if (bench === null || bench.fields.length < verdict.bench.fields.length) continue;
-      const fit = weigh(bench, {
-        causes: [], slipped: unslipped, reading, errors: unknownReadingErrors, logPrior: Math.log(priors.correct),
-        free: nothingFree, copied: nothingFree, meant: nothingMeant,
-      }); // prettier-ignore
+      const fit = weigh(
+        bench,
+        plainHypothesis(unslipped, reading, unknownReadingErrors, Math.log(priors.correct)),
+      );
       if (fit === null || fit.unexplained.length > 0) continue;
       files.set(file, { logWeight: fit.logWeight, student: other.marked.submission.student });
     }

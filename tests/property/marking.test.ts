@@ -33,7 +33,7 @@ const texts: fc.Arbitrary<Partial<Record<QuantityKey, string>>> = fc.record(
   ) as Record<QuantityKey, fc.Arbitrary<string>>,
   { requiredKeys: [] },
 );
-const runs = { numRuns: 60 };
+const runs = { numRuns: 30 };
 
 describe('marking, whatever is handed in', () => {
   it('points never exceed the scheme, part by part and in sum', () => {
@@ -62,7 +62,7 @@ describe('marking, whatever is handed in', () => {
           a.slips.map((s) => [s.code, s.probability.toFixed(6)]),
         );
       }),
-      { numRuns: 30 },
+      { numRuns: 15 },
     );
   });
 
@@ -123,7 +123,7 @@ describe('marking, whatever is handed in', () => {
           );
         },
       ),
-      { numRuns: 150 },
+      { numRuns: 50 },
     );
   });
 
@@ -141,7 +141,7 @@ describe('marking, whatever is handed in', () => {
           );
         },
       ),
-      { numRuns: 150 },
+      { numRuns: 50 },
     );
   });
 });

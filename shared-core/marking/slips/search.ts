@@ -83,11 +83,21 @@ export function plain(
   logPrior: number,
   reading: Reading = input.reading,
 ): Hypothesis {
+  return { ...plainHypothesis(slipped, reading, input.errors, logPrior), causes };
+}
+
+/** The same without a cause. */
+export function plainHypothesis(
+  slipped: Hypothesis['slipped'],
+  reading: Reading,
+  errors: readonly ReadingError[],
+  logPrior: number,
+): Hypothesis {
   return {
-    causes,
+    causes: [],
     slipped,
     reading,
-    errors: input.errors,
+    errors,
     logPrior,
     free: nothingFree,
     copied: nothingFree,

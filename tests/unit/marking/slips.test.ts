@@ -11,6 +11,7 @@ import type { FileReference } from '../../../shared-core/reference/types.ts';
 import type { QuantityKey } from '../../../shared-core/units/types.ts';
 import {
   hydrogenChlorideFile,
+  submitted,
   heavyHydrogenChloride,
   referenceOf,
   schemeFor,
@@ -291,6 +292,31 @@ describe('vibration', () => {
     ['anharmonicity-ratio', { omegaExe: X / omega }],
   ])('%s', (code, changed) => {
     expect(found(changed)).toBe(code);
+  });
+});
+
+describe('columns of isotopologues', () => {
+  const file = referenceOf([
+    { isotopologue: 'H35Cl', band: hydrogenChloride },
+    { isotopologue: 'D35Cl', band: deuteriumChloride },
+  ]);
+  const scheme = schemeFor(['nu0', 'Be', 'alphaE'], { isotopologues: ['H35Cl', 'D35Cl'] });
+  const hydrogen: Numbers = { nu0, Be, alphaE };
+  const deuterium: Numbers = { nu0: 2091.06, Be: 5.44848, alphaE: 0.11245 };
+  const codes = (first: Numbers, second: Numbers): string[] => {
+    const of = (numbers: Numbers, name: string) =>
+      Object.entries(written(numbers)).map(([key, text]) => submitted(key as QuantityKey, text, name));
+    const values = [...of(first, 'H35Cl'), ...of(second, 'D35Cl')];
+    const marked = markSubmission(
+      submissionOf({}, { isotopologue: null, values }),
+      [{ file: 'a.csv', reference: file }],
+      scheme,
+    );
+    return marked.slips.map((s) => s.code);
+  };
+  it('values in each other’s columns are recognised, values in their own are not', () => {
+    expect(codes(deuterium, hydrogen)[0]).toBe('isotope-columns-swapped');
+    expect(codes(hydrogen, deuterium)).toEqual([]);
   });
 });
 
