@@ -76,7 +76,7 @@ function inflate(
       if (!final) return;
       const whole = join(parts, size);
       if (size !== entry.size || crc32(whole) !== entry.crc32)
-        state.state.fault = `“${file.name}” does not match its check sum.`;
+        state.fault = `“${file.name}” does not match its check sum.`;
       else files.push({ name: file.name, bytes: whole });
     };
     file.start();
