@@ -1,15 +1,15 @@
-import type { PrescribedConstants } from '../reference/types.ts';
 import type { QuantityKey, Reason } from '../units/types.ts';
 import { askedOf, isotopologuesOf, valuesOf } from './asked.ts';
 import type { ChosenSet } from './compare.ts';
 import { isotopologue as isotopologueNamed } from '../molecule/isotopologue.ts';
 import { checkAcrossIsotopologues } from './invariants.ts';
 import { markValues } from './mark-values.ts';
+import type { MarkedPart } from './marked-part.ts';
 import { observationsOf } from './observations.ts';
-import { answerKey, type AnswerKey, type NamedReference } from './prescribe.ts';
+import { answerKey, type NamedReference } from './prescribe.ts';
 import { columnsSwapped } from './slips/columns-swapped.ts';
 import { allFindings } from './slips/explain.ts';
-import { weighSubmission, type SubmissionVerdict } from './slips/weigh-submission.ts';
+import { weighSubmission } from './slips/weigh-submission.ts';
 import { ownLinesOf } from './student-lines.ts';
 import type {
   MarkedSubmission,
@@ -78,15 +78,6 @@ export function markInParts(
     remarks: remarksOf(submission, references),
   };
   return { marked, parts };
-}
-
-/** Everything about one isotopologue of a submission. */
-export interface MarkedPart {
-  readonly key: AnswerKey;
-  readonly values: readonly MarkedValue[];
-  readonly chosen: readonly ChosenSet[];
-  readonly prescribed: readonly PrescribedConstants[];
-  readonly verdict: SubmissionVerdict | null;
 }
 
 function markIsotopologue(

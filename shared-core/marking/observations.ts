@@ -1,4 +1,4 @@
-import type { MarkedPart } from './mark-submission.ts';
+import type { MarkedPart } from './marked-part.ts';
 import { copiedKeys, handbookCode, handbookProbability } from './slips/explain.ts';
 import { lineName } from './slips/line-table.ts';
 import { shown, symbols } from './slips/numbers.ts';

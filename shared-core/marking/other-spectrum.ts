@@ -1,4 +1,4 @@
-import type { MarkedPart } from './mark-submission.ts';
+import type { MarkedPart } from './marked-part.ts';
 import { copyingAdvice } from './observations.ts';
 import { benchOf, weigh } from './slips/hypothesis.ts';
 import { unknownReadingErrors } from './slips/likelihood.ts';
