@@ -33,9 +33,9 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
   }
   const weights = problem.data.weights.slice();
   const plain = Float64Array.of(1);
-  let first = fitRegion(problem, problem.start, weights, plain, 12);
+  let first = fitRegion(problem, problem.start, weights, plain, 16);
   if (first.chiSquared > 1.2 * problem.data.observed.length) {
-    const other = fitRegion(problem, sharpStart(prepared, problem), weights, plain, 12);
+    const other = fitRegion(problem, sharpStart(prepared, problem), weights, plain, 16);
     if (other.chiSquared < first.chiSquared) first = other;
   }
   if (first.inverse.length === 0)
@@ -43,7 +43,7 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
   const leftOut = foreignRanges(problem, first, width);
   for (const [from, to] of leftOut) maskRange(problem, weights, from, to);
   const filter = filterFrom(problem, first, weights, prepared.noiseCorrelationPoints);
-  const fit = fitRegion(problem, first.state, weights, filter, 10);
+  const fit = fitRegion(problem, first.state, weights, filter, 20);
   if (fit.inverse.length === 0)
     return { outcome: 'rank-deficient', reason: 'the spectrum cannot tell the constants apart' };
   if (!fit.converged) return { outcome: 'not-converged', reason: 'the model of the spectrum did not settle' };
