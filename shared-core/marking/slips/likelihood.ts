@@ -24,13 +24,13 @@ export const unknownReadingErrors: readonly ReadingError[] = [
   { perCm: 0.6, prior: 0.02 },
 ];
 
-/** Reading errors about a known one (scheme or sampling). */
+/** Reading errors about a known one (scheme or sampling): a third of it to ten times it, since doublets and wide lines add their own. */
 export function readingErrorsAbout(perCm: number): readonly ReadingError[] {
   return [
-    { perCm: perCm / 4, prior: 0.25 },
-    { perCm: perCm / 1.5, prior: 0.35 },
-    { perCm: perCm * 1.5, prior: 0.28 },
-    { perCm: perCm * 4, prior: 0.12 },
+    { perCm: perCm / 3, prior: 0.25 },
+    { perCm, prior: 0.35 },
+    { perCm: perCm * 3, prior: 0.28 },
+    { perCm: perCm * 10, prior: 0.12 },
   ];
 }
 

@@ -91,8 +91,12 @@ export function readingOf(
   return { context: first.context, mean, covariances: () => (known ??= covariancesOf(stacks, mean)) };
 }
 
-/** The same reading with the error of one single line beside it, for steps that read a line and not the fit. */
-export function withOneLine(reading: Reading): Reading {
+/**
+ * The same reading with the error of one single line beside it, for steps that read a line and not the fit.
+ *
+ * @param leastPerCm error of a single line that is there even where the fit is known exactly (a table of lines was handed in).
+ */
+export function withOneLine(reading: Reading, leastPerCm = 0): Reading {
   const p = reading.mean.length;
   const grown = (covariance: Float64Array, last: number): Float64Array => {
     const out = new Float64Array((p + 1) ** 2);
@@ -106,7 +110,7 @@ export function withOneLine(reading: Reading): Reading {
     context: (values) => ({ ...reading.context(values), oneLine: values[p]! }),
     covariances: () => {
       const { fixed, reading: unit } = reading.covariances();
-      return (known ??= { fixed: grown(fixed, 0), reading: grown(unit, 1) });
+      return (known ??= { fixed: grown(fixed, leastPerCm ** 2), reading: grown(unit, 1) });
     },
   };
 }

@@ -100,7 +100,7 @@ function weighFrom(
 ): Verdict | null {
   const fitted = readingOf(representativeSets(sets), options.method, scheme, molecule, key.extra);
   if (fitted === null) return null;
-  const oneLineReading = withOneLine(fitted);
+  const oneLineReading = withOneLine(fitted, errors === tableErrors ? singleLinePerCm : 0);
   const reading = options.originByMidpoint ? oneLineReading : fitted;
   const groups = groupsForReplays(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
@@ -127,6 +127,9 @@ function weighFrom(
     handbook: handbookValues(molecule, scheme),
   });
 }
+
+/** How far a single line of a table stands from the fit through all of them, cm-1 (common practice). */
+const singleLinePerCm = 0.1;
 
 /** What is left of reading where the lines themselves were handed in: their rounding, or a fit to slightly other numbers. */
 const tableErrors: readonly ReadingError[] = [
