@@ -91,7 +91,8 @@ function markIsotopologue(
   const key = answerKey(isotopologue, references, scheme, submission);
   const submitted = valuesOf(submission, isotopologue, isotopologues);
   const asked = askedOf(scheme, [isotopologue]);
-  const { values, chosen } = markValues(key, asked, submitted, scheme);
+  const ownLines = ownLinesOf(submission, isotopologue, isotopologues);
+  const { values, chosen } = markValues(key, asked, submitted, scheme, ownLines);
   const best = bestOf(chosen);
   const verdict =
     best === null
@@ -102,7 +103,7 @@ function markIsotopologue(
           asked: asked.map((a) => a.rule.key),
           originByMidpoint: originByMidpoint(values, chosen, best),
           stepPerCm: key.source === null ? null : (options.stepPerCmOf?.(key.source.file) ?? null),
-          ownLines: ownLinesOf(submission, isotopologue, isotopologues),
+          ownLines,
         });
   return { key, values, chosen, prescribed: key.methods.map((m) => m.span.constants), verdict };
 }

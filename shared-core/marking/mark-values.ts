@@ -1,5 +1,6 @@
 import { stackPrimitives, unitOf } from '../reference/methods/constants-by-method.ts';
-import type { DeriveContext, Values } from '../reference/methods/derive.ts';
+import { derive, type DeriveContext, type Values } from '../reference/methods/derive.ts';
+import type { MethodLine } from '../reference/methods/method-line.ts';
 import type { QuantityKey } from '../units/types.ts';
 import { bestMethodFor, chooseSets, compareNumber, type ChosenSet } from './compare.ts';
 import type { Asked } from './asked.ts';
@@ -28,16 +29,16 @@ export function markValues(
   asked: readonly Asked[],
   submitted: readonly SubmittedValue[],
   scheme: MarkingScheme,
+  ownLines: readonly MethodLine[] | null = null,
 ): MarkedIsotopologue {
   const given = new Map<QuantityKey, SubmittedValue>(submitted.map((v) => [v.quantity, v]));
   const readable = new Map<QuantityKey, ReadValue>();
   for (const v of submitted) if (isRead(v)) readable.set(v.quantity, v);
   const chosen = key.reliability === 'none' ? [] : chooseSets(key, asked, readable);
   const marked = asked.map((one) => markOne(one, given.get(one.rule.key), key, chosen));
-  return {
-    values: scheme.carryForward ? carry(marked, asked, readable, key, chosen, scheme) : marked,
-    chosen,
-  };
+  if (!scheme.carryForward) return { values: marked, chosen };
+  const fromLines = followingFromLines(marked, asked, readable, key, scheme, ownLines);
+  return { values: carry(fromLines, asked, readable, key, chosen, scheme), chosen };
 }
 
 /** The derivation behind a chosen set; null where its lines do not carry the method. */
@@ -126,6 +127,59 @@ function whyNoReference(quantity: QuantityKey, key: AnswerKey): string {
   return `The prescribed method (${names}) yields no ${quantity} of ${key.isotopologue} from this file.`;
 }
 
+/** A student's line that stands no further than this from the file's was read correctly, cm-1. */
+const readCorrectlyWithinPerCm = 0.3;
+
+/**
+ * Where every line handed in agrees with the file's, a value that follows from them by a prescribed method is correct work, however
+ * much the method makes of small reading errors.
+ */
+function followingFromLines(
+  marked: readonly MarkedValue[],
+  asked: readonly Asked[],
+  readable: ReadonlyMap<QuantityKey, ReadValue>,
+  key: AnswerKey,
+  scheme: MarkingScheme,
+  ownLines: readonly MethodLine[] | null,
+): MarkedValue[] {
+  const { molecule } = key;
+  if (ownLines === null || molecule === null || !agreeWithFile(ownLines, key)) return [...marked];
+  const contexts = key.methods.flatMap(({ method }) => {
+    const stacked = stackPrimitives(ownLines, method, scheme, molecule, key.extra);
+    return 'reason' in stacked ? [] : [stacked.context(stacked.values)];
+  });
+  const derived = contexts.map((c) => derive(c));
+  return marked.map((value, i) => {
+    if (value.agreement !== 'outside' && value.agreement !== 'part credit') return value;
+    const submitted = readable.get(value.quantity);
+    if (submitted === undefined || value.reference === null) return value;
+    for (const own of derived) {
+      const reference = { ...value.reference, value: own[value.quantity] ?? NaN };
+      const comparison = compareNumber(asked[i]!, submitted, reference);
+      if (comparison.agreement !== 'within') continue;
+      return {
+        ...value,
+        agreement: 'within',
+        reference,
+        tolerance: comparison.tolerance,
+        deviation: comparison.deviation,
+        points: value.points === null ? null : comparison.points,
+        reason: 'Held against the lines handed in, all of which agree with the file.',
+      };
+    }
+    return value;
+  });
+}
+
+function agreeWithFile(ownLines: readonly MethodLine[], key: AnswerKey): boolean {
+  const file = new Map(key.candidates.map((l) => [l.m, l.wavenumberPerCm]));
+  const known = ownLines.filter((l) => file.has(l.m));
+  return (
+    known.length >= 5 &&
+    known.every((l) => Math.abs(l.wavenumberPerCm - file.get(l.m)!) <= readCorrectlyWithinPerCm)
+  );
+}
+
 /** Gives values that follow correctly from the student's own earlier ones their credit; never takes any away. */
 function carry(
   marked: readonly MarkedValue[],
@@ -139,7 +193,8 @@ function carry(
   for (const [quantity, v] of readable) own[quantity] = v.value;
   const contexts = chosen.flatMap((c) => contextOf(key, c, scheme) ?? []);
   const carried = marked.map((value, i) => {
-    if (value.agreement !== 'outside' && value.agreement !== 'part credit') return value;
+    if (value.carriedForward || (value.agreement !== 'outside' && value.agreement !== 'part credit'))
+      return value;
     const ways = contexts.flatMap((c) => fromOwnValues(value.quantity, own, c));
     return follows(value, asked[i]!, readable, ways, 'Follows correctly from the values given before it.');
   });

@@ -16,7 +16,8 @@ import {
   submissionOf,
   submitted,
 } from '../../helpers/marking-cases.ts';
-import { deuteriumChloride, hydrogenChloride } from '../../helpers/term-value-lines.ts';
+import { valuesByMethod } from '../../../shared-core/reference/methods/constants-by-method.ts';
+import { deuteriumChloride, h35cl, hydrogenChloride, wavenumberOf } from '../../helpers/term-value-lines.ts';
 
 const all = ['nu0', 'B0', 'B1', 'Be', 'alphaE', 'D', 're', 'k'] as const;
 /** A cubic on ten lines a side of H35Cl, rounded: nothing here was computed by the marking. */
@@ -201,6 +202,45 @@ describe('error carried forward', () => {
   it('two different slips in r and k both cost', () => {
     const marked = mark(submissionOf({ ...honest, re: '180.26', k: '12.18' }));
     expect([value(marked, 're').points, value(marked, 'k').points]).toEqual([0, 0]);
+  });
+});
+
+describe('values from the lines handed in', () => {
+  // Six lines a side with reading errors of ±0.05 cm-1: of the sign pattern of a cubic, which is what D suffers from.
+  const errors = [-0.05, -0.05, 0.05, 0.05, 0.05, 0.05, -0.05, -0.05, -0.05, -0.05, 0.05, 0.05];
+  const table = (extra = 0) =>
+    [-6, -5, -4, -3, -2, -1, 1, 2, 3, 4, 5, 6].map((m, i) => ({
+      isotopologue: null,
+      m,
+      wavenumberPerCm: wavenumberOf(hydrogenChloride, m) + errors[i]! + (m === 6 ? extra : 0),
+    }));
+  const own = (lines: ReturnType<typeof table>): string =>
+    valuesByMethod(
+      lines.map((l) => ({ ...l, uncertaintyPerCm: 0.05 })),
+      schemeFor(all).methods[0]!,
+      schemeFor(all),
+      h35cl,
+    ).D!.toPrecision(4);
+  const strict = {
+    ...schemeFor(['D']),
+    quantities: [{ ...schemeFor(['D']).quantities[0]!, full: { relative: 0.01 }, part: null }],
+  };
+
+  it('a value that follows from lines that all agree with the file is correct work', () => {
+    const D = own(table());
+    expect(value(mark(submissionOf({ D }), strict), 'D').agreement).toBe('outside');
+    expect(value(mark(submissionOf({ D }, { lines: table() }), strict), 'D')).toMatchObject({
+      agreement: 'within',
+      points: 1,
+    });
+  });
+
+  it('a misread line among them does not make its value right', () => {
+    const D = own(table(1.5));
+    expect(value(mark(submissionOf({ D }, { lines: table(1.5) }), strict), 'D')).toMatchObject({
+      agreement: 'outside',
+      points: 0,
+    });
   });
 });
 
