@@ -28,6 +28,8 @@ export interface WeighInput {
   readonly surroundings: SlipSurroundings;
   /** Correct steps: the standard ones, or what an accepted method allows in their place. */
   readonly steps: Readonly<Record<QuantityKey, Step>>;
+  /** Other steps that an accepted method allows as well. */
+  readonly alsoCorrect: readonly Readonly<Record<QuantityKey, Step>>[];
   /** Handbook values of the isotopologue, where there are. */
   readonly handbook: Values;
 }

@@ -21,6 +21,9 @@ export function weighSlips(input: WeighInput): Verdict | null {
   if (bench === null) return null;
   const search = startSearch(input, bench);
   search.take(plain(input, [], base, Math.log(priors.correct)));
+  for (const steps of input.alsoCorrect) {
+    search.take(plain(input, [], withSlips(steps, []), Math.log(priors.correct), input.oneLineReading));
+  }
   for (const h of unknownCauses(search)) search.take(h);
   // Where correct work fits, only slips that fit as well can matter, and no replay comes near it.
   const fits = misfits(bench, bench.correct.values).length === 0 && correctStands(search);

@@ -102,6 +102,8 @@ function weighFrom(
   if (fitted === null) return null;
   const oneLineReading = withOneLine(fitted, errors === tableErrors ? singleLinePerCm : 0);
   const reading = options.originByMidpoint ? oneLineReading : fitted;
+  // Where the midpoint is accepted beside another method, both origins are correct work, whichever stands nearer.
+  const midpointAccepted = scheme.methods.some((m) => m.fit === 'midpoint');
   const groups = groupsForReplays(sets);
   const known = new Map<SlipVariant, Map<number, Reading | null>>();
   const replayed = (variant: SlipVariant, group: number): Reading | null => {
@@ -118,7 +120,12 @@ function weighFrom(
     notGiven: options.asked.filter((k) => !fields.some((f) => f.key === k)),
     reading,
     oneLineReading,
-    ways: slipCatalogue.map((definition) => ({ definition, variants: definition.variants(surroundings) })),
+    ways: slipCatalogue
+      .filter((definition) => !(midpointAccepted && definition.code === 'origin-midpoint'))
+      .map((definition) => ({ definition, variants: definition.variants(surroundings) })),
+    alsoCorrect: midpointAccepted
+      ? [options.originByMidpoint ? standardSteps : { ...standardSteps, nu0: midpointOrigin }]
+      : [],
     groups: groups.length,
     replayed,
     errors,
