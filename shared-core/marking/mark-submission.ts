@@ -8,6 +8,7 @@ import type { MarkedPart } from './marked-part.ts';
 import { observationsOf } from './observations.ts';
 import { answerKey, type NamedReference } from './prescribe.ts';
 import { columnsSwapped } from './slips/columns-swapped.ts';
+import { unavoidableReadingError } from './reading-floor.ts';
 import { allFindings } from './slips/explain.ts';
 import { weighSubmission } from './slips/weigh-submission.ts';
 import { ownLinesOf } from './student-lines.ts';
@@ -92,7 +93,9 @@ function markIsotopologue(
   const submitted = valuesOf(submission, isotopologue, isotopologues);
   const asked = askedOf(scheme, [isotopologue]);
   const ownLines = ownLinesOf(submission, isotopologue, isotopologues);
-  const { values, chosen } = markValues(key, asked, submitted, scheme, ownLines);
+  const stepPerCm = key.source === null ? null : (options.stepPerCmOf?.(key.source.file) ?? null);
+  const readingErrorPerCm = unavoidableReadingError(scheme, stepPerCm);
+  const { values, chosen } = markValues(key, asked, submitted, scheme, ownLines, readingErrorPerCm);
   const best = bestOf(chosen);
   const verdict =
     best === null
@@ -102,7 +105,7 @@ function markIsotopologue(
           sets: best.result.span.sets.map((s) => s.set),
           asked: asked.map((a) => a.rule.key),
           originByMidpoint: originByMidpoint(values, chosen, best),
-          stepPerCm: key.source === null ? null : (options.stepPerCmOf?.(key.source.file) ?? null),
+          stepPerCm,
           ownLines,
         });
   return { key, values, chosen, prescribed: key.methods.map((m) => m.span.constants), verdict };

@@ -6,6 +6,8 @@ import { bestMethodFor, chooseSets, compareNumber, type ChosenSet } from './comp
 import type { Asked } from './asked.ts';
 import { fromOwnValues, impliedReducedMassU, standOnMass } from './carry-forward.ts';
 import type { AnswerKey } from './prescribe.ts';
+import { withinReading } from './reading-floor.ts';
+import { shown } from './slips/numbers.ts';
 import type { MarkedValue, MarkingScheme, SubmittedValue } from './types.ts';
 
 type ReadValue = SubmittedValue & { readonly value: number };
@@ -29,15 +31,18 @@ export function markValues(
   asked: readonly Asked[],
   submitted: readonly SubmittedValue[],
   scheme: MarkingScheme,
-  ownLines: readonly MethodLine[] | null = null,
+  ownLines: readonly MethodLine[] | null,
+  readingErrorPerCm: number,
 ): MarkedIsotopologue {
   const given = new Map<QuantityKey, SubmittedValue>(submitted.map((v) => [v.quantity, v]));
   const readable = new Map<QuantityKey, ReadValue>();
   for (const v of submitted) if (isRead(v)) readable.set(v.quantity, v);
   const chosen = key.reliability === 'none' ? [] : chooseSets(key, asked, readable);
-  const marked = asked.map((one) => markOne(one, given.get(one.rule.key), key, chosen));
-  if (!scheme.carryForward) return { values: marked, chosen };
+  const marked = asked.map((one) =>
+    markOne(one, given.get(one.rule.key), key, chosen, scheme, readingErrorPerCm),
+  );
   const fromLines = followingFromLines(marked, asked, readable, key, scheme, ownLines);
+  if (!scheme.carryForward) return { values: fromLines, chosen };
   return { values: carry(fromLines, asked, readable, key, chosen, scheme), chosen };
 }
 
@@ -63,6 +68,8 @@ function markOne(
   submitted: SubmittedValue | undefined,
   key: AnswerKey,
   chosen: readonly ChosenSet[],
+  scheme: MarkingScheme,
+  readingErrorPerCm: number,
 ): MarkedValue {
   const quantity = one.rule.key;
   const blank: MarkedValue = {
@@ -92,13 +99,16 @@ function markOne(
   }
   const best = bestMethodFor(quantity, chosen);
   if (best === null) return { ...blank, agreement: 'no reference', reason: whyNoReference(quantity, key) };
-  const { comparison } = best;
+  const widened = withinReading(best.comparison, one.rule, best.chosen, key, scheme, readingErrorPerCm);
+  const comparison = widened ?? best.comparison;
+  const remark =
+    widened === null
+      ? figuresRemark(one, submitted, comparison)
+      : `Reading errors of ${shown(readingErrorPerCm, 2)} cm⁻¹ alone carry this value so far: part credit reaches to ± ${shown(widened.tolerance.part ?? 0, 2)}.`;
   return {
     ...blank,
     agreement: comparison.agreement,
-    reason: settled
-      ? figuresRemark(one, submitted, comparison)
-      : 'The reference is to be looked at first; points stay open.',
+    reason: settled ? remark : 'The reference is to be looked at first; points stay open.',
     reference: comparison.reference,
     tolerance: comparison.tolerance,
     deviation: comparison.deviation,

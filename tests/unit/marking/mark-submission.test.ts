@@ -244,6 +244,26 @@ describe('values from the lines handed in', () => {
   });
 });
 
+describe('what reading errors alone can do', () => {
+  const few = referenceOf([{ isotopologue: 'D35Cl', band: deuteriumChloride }], 6);
+  const many = referenceOf([{ isotopologue: 'D35Cl', band: deuteriumChloride }], 14);
+  const scheme = schemeFor(['nu0', 'D'], {
+    isotopologues: ['D35Cl'],
+    lines: { rule: 'up-to', m: 14 },
+    readingErrorPerCm: 0.04,
+  });
+  const agreementOfD = (reference: FileReference): string =>
+    value(
+      mark(submissionOf({ nu0: '2091.06', D: '6.5e-5' }, { isotopologue: 'D35Cl' }), scheme, reference),
+      'D',
+    ).agreement;
+
+  it('D of DCl from six lines a side may be off by half for nothing but reading errors: part credit; from fourteen it may not', () => {
+    expect(agreementOfD(few)).toBe('part credit');
+    expect(agreementOfD(many)).toBe('outside');
+  });
+});
+
 describe('report', () => {
   it('holds the keys that the table of formats names, and only finite numbers', () => {
     const json = submissionJson(mark(submissionOf({ ...honest, Be: '10.4400' }))) as unknown as {
