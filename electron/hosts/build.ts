@@ -4,7 +4,7 @@ import { fileURLToPath } from 'node:url';
 
 const root = fileURLToPath(new URL('../../', import.meta.url));
 
-await build({ root, configFile: `${root}vite.config.ts`, logLevel: 'warn' });
+await build({ configFile: `${root}vite.config.ts`, logLevel: 'warn' });
 await build({
   root,
   configFile: false,

@@ -22,7 +22,8 @@ export function runnerUpOf(chosen: BandScore, refined: RefinedBand, ranked: read
   const { constants } = refined;
   const spacing = constants.rotationalConstantLowerPerCm + constants.rotationalConstantUpperPerCm;
   const ownPpm = 1e6 * (constants.bandOriginPerCm / published - 1);
-  const shifts = [-2, -1, 1, 2].map((s) => {
+  // The nearer shift first: of two that are equally impossible it is the one to look at.
+  const shifts = [-1, 1, -2, 2].map((s) => {
     const ppm = 1e6 * ((constants.bandOriginPerCm - s * spacing) / published - 1);
     return {
       text: `${chosen.candidate.isotopologue.name} ${chosen.candidate.upper}-0 with every m ${Math.abs(s)} ${s > 0 ? 'higher' : 'lower'}: its origin would stand ${ppm.toFixed(0)} ppm from the published one`,

@@ -1,7 +1,7 @@
 import { assignLines } from '../assignment/assign-lines.ts';
 import type { AssignedBand, AssignedLine, RunnerUp } from '../assignment/types.ts';
 import { findLines } from '../lines/find-lines.ts';
-import { lineWavenumberPerCm } from '../molecule/index.ts';
+import { lineWavenumberPerCm, naturalAbundance } from '../molecule/index.ts';
 import { prepareSpectrum } from '../spectrum/prepare/prepare-spectrum.ts';
 import type { OrdinateKind, PreparedSpectrum, Spectrum } from '../spectrum/types.ts';
 import type { Reason } from '../units/types.ts';
@@ -118,8 +118,11 @@ function regionsOf(prepared: PreparedSpectrum, bands: readonly AssignedBand[]): 
       last.to = Math.max(last.to, span.to);
     } else regions.push({ bands: [span.band], to: span.to });
   }
-  // Within a region the leader of a merged pair stands first.
-  return regions.map((r) => r.bands.sort((a, b) => Number(a.merged) - Number(b.merged)));
+  // Within a region the leader of a merged pair stands first, then the more abundant isotopologue.
+  const abundance = (b: AssignedBand): number => naturalAbundance(b.isotopologue);
+  return regions.map((r) =>
+    r.bands.sort((a, b) => Number(a.merged) - Number(b.merged) || abundance(b) - abundance(a)),
+  );
 }
 
 function gathered(

@@ -41,24 +41,31 @@ export interface Weighting {
   readonly byQ2: Float64Array;
 }
 
+/** Share of L over which its end is spread. */
+const edgeShare = 0.04;
+
 /** @param spacingCm distance of neighbouring delays. @param most largest number of delays. */
 export function weighting(instrument: InstrumentParameters, spacingCm: number, most: number): Weighting {
   const { pathDifferenceCm: l, q1, q2 } = instrument;
-  const length = Math.min(most, Math.ceil(l / spacingCm + 0.5) + 1);
+  // A jump at L would make the model a staircase in L, on which no solver gets ahead: it is spread over a few per cent of L,
+  // which changes side lobes only some thirty line widths away.
+  const ramp = Math.max(edgeShare * l, 2 * spacingCm);
+  const length = Math.min(most, Math.ceil((l + ramp / 2) / spacingCm) + 1);
   const a = new Float64Array(length);
   const byPath = new Float64Array(length);
   const byQ1 = new Float64Array(length);
   const byQ2 = new Float64Array(length);
   for (let k = 0; k < length; k++) {
     const x = k * spacingCm;
-    // The jump at L is spread over one spacing, so that the model moves smoothly with L.
-    const inside = Math.min(1, Math.max(0, (l - x) / spacingCm + 0.5));
+    const inside = Math.min(1, Math.max(0, (l - x) / ramp + 0.5));
     const phase = (Math.PI * Math.min(x, l)) / l;
     const c1 = Math.cos(phase) - 1;
     const c2 = Math.cos(2 * phase) - 1;
-    const slope = ((q1 * Math.sin(phase) + 2 * q2 * Math.sin(2 * phase)) * phase) / l;
-    a[k] = inside * (1 + q1 * c1 + q2 * c2);
-    byPath[k] = inside * slope + (inside > 0 && inside < 1 ? (1 - 2 * q1) / spacingCm : 0);
+    const value = 1 + q1 * c1 + q2 * c2;
+    const slope = x < l ? ((q1 * Math.sin(phase) + 2 * q2 * Math.sin(2 * phase)) * phase) / l : 0;
+    const onRamp = inside > 0 && inside < 1;
+    a[k] = inside * value;
+    byPath[k] = inside * slope + (onRamp ? (value / ramp) * (ramp > 2 * spacingCm ? x / l : 1) : 0);
     byQ1[k] = inside * c1;
     byQ2[k] = inside * c2;
   }
