@@ -15,7 +15,7 @@ const mostFirstCauses = 24;
  *
  * Firsts are ranked by their weight with unexplained values taken as unknown; those with more of them follow by their number.
  */
-export function takePairs(search: Search, candidates: readonly Candidate[]): void {
+export function takePairs(search: Search, candidates: readonly Candidate[], withReplays: boolean): void {
   const { bench, found } = search;
   const weights = new Map(found.map((w) => [w.hypothesis, w.logWeight]));
   const score = (c: Candidate): number =>
@@ -24,11 +24,13 @@ export function takePairs(search: Search, candidates: readonly Candidate[]): voi
     .filter((c) => c.explains)
     .sort((a, b) => score(b) - score(a))
     .slice(0, mostFirstCauses);
-  const replays = candidatesOf(search, {
-    replays: 'only',
-    complete: false,
-    mostOutOfReach: Math.max(1, bench.fields.length - 3),
-  });
+  const replays = !withReplays
+    ? []
+    : candidatesOf(search, {
+        replays: 'only',
+        complete: false,
+        mostOutOfReach: Math.max(1, bench.fields.length - 3),
+      });
   const seconds = [...candidates.filter((c) => c.variant.replay === undefined), ...replays];
   const unexplained = new Map(found.map((w) => [w.hypothesis, bitsOf(bench, w.unexplained)]));
   for (const first of firsts) {

@@ -1,4 +1,6 @@
+import type { QuantityKey } from '../../units/types.ts';
 import { candidatesOf, type Candidate, type WhichWays } from './candidates.ts';
+import type { Field } from './fields.ts';
 import { benchOf, couldGain, misfits, type Bench, type Weighed } from './hypothesis.ts';
 import { logSum } from './likelihood.ts';
 import { takeOnTop } from './on-top.ts';
@@ -29,7 +31,7 @@ export function weighSlips(input: WeighInput): Verdict | null {
   const fits = misfits(bench, bench.correct.values).length === 0 && correctStands(search);
   const steps = candidatesOf(search, { replays: 'none', complete: fits, mostOutOfReach: 0 });
   weighLikeliest(search, steps);
-  const replays = fits ? [] : candidatesOf(search, replaysAfter(settled(search)));
+  const replays = linesFit(bench) ? [] : candidatesOf(search, replaysAfter(settled(search)));
   weighLikeliest(search, replays);
   const candidates = [...steps, ...replays];
   if (!correctStands(search)) lookCloser(search, candidates);
@@ -48,18 +50,38 @@ function lookCloser(search: Search, candidates: readonly Candidate[]): void {
   }
   takeOnTop(search, search.found);
   if (settled(search) || standingOff(search.bench) < 2) return;
-  takePairs(search, candidates);
+  takePairs(search, candidates, !linesFit(search.bench));
   const oneCause = search.found.filter(
     (w) => w.hypothesis.causes.length === 1 && w.hypothesis.meant.size === 0,
   );
   takeOnTop(search, oneCause);
 }
 
+/** Values that come from the lines with nothing but sums: a slip in the lines shows in one of them. */
+const fromLines: ReadonlySet<QuantityKey> = new Set<QuantityKey>([
+  'nu0',
+  'nu02',
+  'B0',
+  'B1',
+  'B2',
+  'Be',
+  'alphaE',
+  'D',
+]);
+
+/** True where at least two values from the lines were given, and all of them are what correct lines give: then no replay is needed. */
+function linesFit(bench: Bench): boolean {
+  const given = bench.fields.flatMap((f, i) => (fromLines.has(f.key) ? [{ f, i }] : []));
+  return given.length >= 2 && given.every(({ f, i }) => !standsOff(bench, f, i));
+}
+
+function standsOff(bench: Bench, f: Field, i: number): boolean {
+  return Math.abs(f.value - bench.correct.values[f.key]!) > 2.5 * bench.careful[i]!;
+}
+
 /** How many values stand off correct work by more than a careful reading explains; two causes need two at least. */
 function standingOff(bench: Bench): number {
-  return bench.fields.filter(
-    (f, i) => Math.abs(f.value - bench.correct.values[f.key]!) > 2.5 * bench.careful[i]!,
-  ).length;
+  return bench.fields.filter((f, i) => standsOff(bench, f, i)).length;
 }
 
 /** Candidates that leave nothing plainly unexplained, from the likeliest on, until the rest cannot matter. */
