@@ -10,7 +10,7 @@ export interface BandForTests {
   readonly dUpper: number;
 }
 
-/** H35Cl 1-0: B_0, B_1 and ν̃0 as published for the fundamental (issue A quotes them); D_0, D_1 from memory. */
+/** H35Cl 1-0: B_0, B_1 and ν̃0 as published for the fundamental; D_0, D_1 from memory. */
 export const hydrogenChloride: BandForTests = {
   origin: 2885.977,
   bLower: 10.44025,

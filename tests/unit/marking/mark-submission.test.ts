@@ -126,7 +126,7 @@ describe('agreement and points', () => {
       { fit: 'polynomial', degree: 3 },
       { fit: 'combination-differences', intercept: true, cubicTerm: false },
     ];
-    // Ten a side, free intercept: low by about 1.04 % (science.md: 0.85 % for J to 8, 1.24 % for J to 10).
+    // Ten a side, free intercept: low by about 1.04 % (worked out beforehand: 0.85 % for J to 8, 1.24 % for J to 10).
     const marked = mark(submissionOf({ Be: '10.482', re: '128.13' }), schemeFor(['Be', 're'], { methods }));
     expect(value(marked, 'Be')).toMatchObject({
       agreement: 'within',

@@ -8,7 +8,7 @@ const rule = (scheme: MarkingScheme, key: string): QuantityRule =>
   scheme.quantities.find((q) => q.key === key)!;
 
 describe('starterScheme', () => {
-  it('cuts tolerances to the mistake margin: CO re 0.1 / 0.2 %, Be at most 0.2 / 0.4 % (science.md: re margin 0.23 %, Be 0.45 %)', () => {
+  it('cuts tolerances to the mistake margin: CO re 0.1 / 0.2 %, Be at most 0.2 / 0.4 % (worked out beforehand: re margin 0.23 %, Be 0.45 %)', () => {
     const scheme = starterSchemeFor('CO fundamental');
     expect(rule(scheme, 're')).toMatchObject({ full: { relative: 0.001 }, part: { relative: 0.002 } });
     expect(rule(scheme, 'Be')).toMatchObject({ full: { relative: 0.002 }, part: { relative: 0.004 } });
@@ -60,7 +60,7 @@ describe('mistakeMargins', () => {
     ['HCl fundamental', 'Be', 1.44],
     ['CO fundamental', 're', 0.23],
     ['CO fundamental', 'Be', 0.45],
-  ] as const)('%s: %s against its nearest mistake %f %% (science.md)', (variant, key, percent) => {
+  ] as const)('%s: %s against its nearest mistake %f %% (worked out beforehand)', (variant, key, percent) => {
     const margin = mistakeMargins(starterSchemeFor(variant)).find((m) => m.quantity === key)!;
     expect(Math.abs(100 * margin.relative! - percent)).toBeLessThan(0.015);
     expect(margin.warnings).toEqual([]);

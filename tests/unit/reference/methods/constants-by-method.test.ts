@@ -56,7 +56,7 @@ describe('methods that hold the exact term values give the constants back', () =
   });
 });
 
-describe('methods that leave something out give what science.md lists', () => {
+describe('methods that leave something out give what the design lists', () => {
   it.each([
     [6, true, -0.54],
     [8, true, -0.85],
@@ -142,7 +142,7 @@ describe('hand-worked cases', () => {
     );
   });
 
-  it('attainable uncertainties: 0.1 cm-1 per line, cubic, ten a side (science.md, what is attainable)', () => {
+  it('attainable uncertainties: 0.1 cm-1 per line, cubic, ten a side (worked out beforehand, what is attainable)', () => {
     const lines = linesOf(band, 10).map((l) => ({ ...l, uncertaintyPerCm: 0.1 }));
     const c = constantsByMethod(lines, cubic, settings, h35cl);
     const percent = (key: 'Be' | 're' | 'alphaE' | 'D'): number =>
