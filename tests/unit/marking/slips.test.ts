@@ -172,7 +172,7 @@ describe('slips of one step are found from their numbers', () => {
 });
 
 describe('slips in the numbering are found by replay', () => {
-  // Figures of the slip catalogue for ten lines a side where it gives any; the rest from a cubic through the renumbered lines (numpy polyfit).
+  // Figures of the slip catalogue for ten lines a side.
   const shift = (s: 1 | -1): Numbers => {
     const [c1, c2, c3] = [B0 + B1, B1 - B0, -4 * D];
     const c = { c0: nu0 - s * c1 + c2 - s * c3, c1: c1 - 2 * s * c2 + 3 * c3, c2: c2 - 3 * s * c3 };
