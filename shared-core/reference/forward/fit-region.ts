@@ -37,7 +37,7 @@ export interface RegionFit {
 }
 
 /** Weak knowledge about instruments and gases, so that what the data leave open stays sensible: value and standard deviation. */
-function priors(
+export function priors(
   problem: RegionProblem,
 ): { at: number; of: (s: RegionState) => number; value: number; sigma: number }[] {
   const at = problem.maps.length - problem.layout.knots - 4;

@@ -1,5 +1,6 @@
 import { lineWavenumberPerCm } from '../../molecule/index.ts';
 import { fitRegion, type RegionFit, type RegionProblem } from './fit-region.ts';
+import { correlatedCovariance } from './influence.ts';
 import { foreignRanges, lineDistances, pointResiduals, robustSigma } from './foreign.ts';
 import { constantKeys } from './layout.ts';
 import { linePositions } from './line-positions.ts';
@@ -103,14 +104,16 @@ function result(
   leftOut: readonly (readonly [number, number])[],
 ): ForwardFit {
   const { all, lines } = misfitOf(problem, fit, weights, width);
-  const scale = Math.max(all, lines);
+  // What the correlation makes of σ comes from the influences; a misfit on the lines goes on top.
+  const misfit = all > 0 ? Math.max(1, lines / all) : 1;
+  const correlated = correlatedCovariance(problem, fit, weights);
   const beside = robustSigma(pointResiduals(problem, fit), (i) => weights[i]! > 0);
   const meanNoise = median(problem.data.weights.filter((w) => w > 0).map((w) => 1 / w));
   return {
     outcome: 'converged',
     constants: fit.state.constants,
-    covariance: constantsCovariance(problem, fit, scale),
-    lines: linePositions(problem, fit, width, scale),
+    covariance: constantsCovariance(problem, correlated.ofConstants, misfit),
+    lines: linePositions(problem, fit, width, correlated.factor * misfit),
     instrument: {
       maximumPathDifferenceCm: fit.state.pathDifferenceCm,
       q1: fit.state.q1,
@@ -118,7 +121,7 @@ function result(
       lorentzHalfWidthPerCm: fit.state.lorentzHalfWidthPerCm,
     },
     noise: beside * meanNoise,
-    misfit: all > 0 ? Math.max(1, lines / all) : 1,
+    misfit,
     iterations,
     leftOutPerCm: leftOut,
   };
@@ -127,8 +130,8 @@ function result(
 const median = (values: Float64Array): number => values.toSorted()[values.length >> 1] ?? 0;
 
 /** Joint covariance of the constants of all bands; a follower moves with its leader. */
-function constantsCovariance(problem: RegionProblem, fit: RegionFit, scale: number): Float64Array {
-  const np = problem.maps.length;
+function constantsCovariance(problem: RegionProblem, fitted: Float64Array, scale: number): Float64Array {
+  const fittedCount = problem.layout.constants.length;
   const n = 5 * problem.bands.length;
   // Rows of the derivative of all constants by the fitted ones.
   const rows: { at: number; coefficient: number }[][] = Array.from({ length: n }, () => []);
@@ -145,7 +148,7 @@ function constantsCovariance(problem: RegionProblem, fit: RegionFit, scale: numb
     for (let j = 0; j < n; j++) {
       let sum = 0;
       for (const a of rows[i]!)
-        for (const b of rows[j]!) sum += a.coefficient * b.coefficient * fit.inverse[a.at * np + b.at]!;
+        for (const b of rows[j]!) sum += a.coefficient * b.coefficient * fitted[a.at * fittedCount + b.at]!;
       covariance[i * n + j] = sum * scale * scale;
     }
   }

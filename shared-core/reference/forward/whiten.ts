@@ -34,7 +34,8 @@ export function whiteningFilter(
   return a.map((v) => v / Math.sqrt(error));
 }
 
-function autocorrelation(x: Float64Array, present: Uint8Array, order: number): Float64Array {
+/** Autocorrelation at 0 … order points: Σ x_i x_{i−k} / n over the pairs of points present, n the number of points present. */
+export function autocorrelation(x: Float64Array, present: Uint8Array, order: number): Float64Array {
   const r = new Float64Array(order + 1);
   let count = 0;
   for (let i = 0; i < x.length; i++) count += present[i]!;
