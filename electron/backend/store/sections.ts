@@ -58,6 +58,7 @@ export const sectionOperations = {
     })();
     db.pragma('wal_checkpoint(TRUNCATE)');
     db.exec('VACUUM');
+    db.pragma('wal_checkpoint(TRUNCATE)');
   },
 
   rememberColumns: (db: Database.Database, { id, columns }: { id: number; columns: string }): void => {

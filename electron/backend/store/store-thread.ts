@@ -38,7 +38,7 @@ function start(): void {
         argument: unknown,
       ) => unknown;
       const result = operation(store.db, argument);
-      if (name === 'removeSection') purgeBackups(file);
+      if (name === 'removeSection') purgeBackups(store.db, file, today);
       port.postMessage({ id, result });
     } catch (error) {
       port.postMessage({ id, error: error instanceof Error ? error.message : String(error) });
