@@ -12,6 +12,8 @@ export interface LoopbackOptions {
   readonly port?: number;
   /** Called when no window has been connected for this long; 0: never. */
   readonly idleMs?: number;
+  /** A request whose body takes longer is cut. */
+  readonly bodyTimeoutMs?: number;
   readonly onIdle?: () => void;
 }
 
@@ -23,7 +25,7 @@ export interface Loopback {
 }
 
 const mostBodyBytes = 4_000_000;
-const bodyTimeoutMs = 20_000;
+const usualBodyTimeoutMs = 20_000;
 const mostConnections = 64;
 const cookieName = 'rovimark';
 
@@ -89,7 +91,7 @@ export async function startLoopback(options: LoopbackOptions): Promise<Loopback>
       refuse(response, 415, 'Calls are JSON.');
       return;
     }
-    const body = await readBody(request);
+    const body = await readBody(request, options.bodyTimeoutMs ?? usualBodyTimeoutMs);
     if (body === null) {
       refuse(response, 413, 'The request is too large or too slow.');
       return;
@@ -153,11 +155,11 @@ function listening(server: Server, port: number): Promise<number> {
   });
 }
 
-function readBody(request: IncomingMessage): Promise<string | null> {
+function readBody(request: IncomingMessage, timeoutMs: number): Promise<string | null> {
   return new Promise((resolve) => {
     const parts: Buffer[] = [];
     let size = 0;
-    const timer = setTimeout(() => end(null), bodyTimeoutMs);
+    const timer = setTimeout(() => end(null), timeoutMs);
     const end = (body: string | null): void => {
       clearTimeout(timer);
       resolve(body);

@@ -30,9 +30,10 @@ export function unzip(bytes: Uint8Array, archiveName: string): UnzipOutcome {
   if (entries === null) return refuse('the archive is damaged or cut short.');
   if (entries.length > zipLimits.entries)
     return refuse(`the archive holds ${entries.length} entries, more than ${zipLimits.entries}.`);
+  const unsafe = entries.find((e) => !isSafe(e.name));
+  if (unsafe !== undefined) return refuse(`the entry “${unsafe.name}” points outside the archive.`);
   const wanted = entries.filter((e) => !e.name.endsWith('/') && !isHidden(e.name));
   for (const e of wanted) {
-    if (!isSafe(e.name)) return refuse(`the entry “${e.name}” points outside the archive.`);
     if (e.encrypted) return refuse('the archive is encrypted.');
     if (/\.(zip|7z|rar|tar|gz)$/i.test(e.name))
       return refuse(`“${e.name}” is an archive within the archive.`);
