@@ -26,6 +26,6 @@ export async function ask<M extends MethodName>(method: M, input: InputOf<M>): P
 }
 
 /** @returns a function that ends the subscription. */
-export function onAppEvent(listener: (event: AppEvent) => void): () => void {
+export function onAppEvent(listener: (event: AppEvent) => void): () => unknown {
   return current().onEvent(listener);
 }

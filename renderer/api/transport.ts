@@ -3,7 +3,7 @@ import type { AppEvent, Envelope } from '../../shared-core/contract/index.ts';
 /** How calls reach the back end: through Electron's bridge, or by HTTP on this computer. */
 export interface Transport {
   readonly call: (method: string, input: unknown) => Promise<Envelope<unknown>>;
-  readonly onEvent: (listener: (event: AppEvent) => void) => () => void;
+  readonly onEvent: (listener: (event: AppEvent) => void) => () => unknown;
 }
 
 declare global {
@@ -18,6 +18,9 @@ export function findTransport(unreachable: string): Transport {
 }
 
 function httpTransport(unreachable: string): Transport {
+  // One stream for the whole window: a browser opens only six connections to a host.
+  const listeners = new Set<(event: AppEvent) => void>();
+  let source: EventSource | null = null;
   return {
     call: async (method, input) => {
       try {
@@ -34,9 +37,15 @@ function httpTransport(unreachable: string): Transport {
       }
     },
     onEvent: (listener) => {
-      const source = new EventSource('events');
-      source.onmessage = (message: MessageEvent<string>) => listener(JSON.parse(message.data) as AppEvent);
-      return () => source.close();
+      listeners.add(listener);
+      if (source === null) {
+        source = new EventSource('events');
+        source.onmessage = (message: MessageEvent<string>) => {
+          const event = JSON.parse(message.data) as AppEvent;
+          for (const each of listeners) each(event);
+        };
+      }
+      return () => listeners.delete(listener);
     },
   };
 }

@@ -4,7 +4,7 @@ import { onAppEvent } from '../api/client.ts';
 
 /** Told of changes and jobs of one section (of all where none is given); bursts arrive at most every quarter of a second. */
 export function useSectionEvents(sectionId: () => number | null, listener: (event: AppEvent) => void): void {
-  let stop: (() => void) | null = null;
+  let stop: (() => unknown) | null = null;
   let timer: ReturnType<typeof setTimeout> | undefined;
   let waiting: AppEvent | null = null;
   onMounted(() => {
