@@ -3,6 +3,7 @@ import { normalEquations, whitened, type Column, type ParameterMap } from './col
 import type { FineGrid } from './grid.ts';
 import { lowerBound } from './line-columns.ts';
 import type { Layout } from './layout.ts';
+import { addPriors, penaltyOf, type Prior } from './priors.ts';
 import { baselineAt, type RegionData } from './region-data.ts';
 import { modelState, stepped, type Limits, type RegionState } from './region-state.ts';
 import { modelTransmittance, transmittanceOnly, type ModelValues } from './transmittance.ts';
@@ -20,6 +21,7 @@ export interface RegionProblem {
   readonly grid: FineGrid;
   readonly limits: Limits;
   readonly start: RegionState;
+  readonly priors: readonly Prior[];
 }
 
 export interface RegionFit {
@@ -27,6 +29,8 @@ export interface RegionFit {
   /** Inverse of the normal matrix over the parameters, in the weights and the filter used. */
   readonly inverse: Float64Array;
   readonly chiSquared: number;
+  /** χ² and what prior knowledge adds to it. */
+  readonly cost: number;
   /** False where the last step still gained much: the minimum was not reached. */
   readonly converged: boolean;
   readonly iterations: number;
@@ -34,38 +38,6 @@ export interface RegionFit {
   /** Whitened basis columns and residual at the solution. */
   readonly columns: readonly Column[];
   readonly residual: Column;
-}
-
-/** Weak knowledge about instruments and gases, so that what the data leave open stays sensible: value and standard deviation. */
-export function priors(
-  problem: RegionProblem,
-): { at: number; of: (s: RegionState) => number; value: number; sigma: number }[] {
-  const at = problem.maps.length - problem.layout.knots - 4;
-  const { start, layout } = problem;
-  const firstStrength = layout.constants.length + layout.freeLines.length;
-  const strengths = layout.ownStrengths.map((i, k) => ({
-    at: firstStrength + k,
-    of: (s: RegionState) => Math.log(s.strengths[i]!),
-    value: Math.log(start.strengths[i]!),
-    sigma: 2.5,
-  }));
-  return [
-    ...strengths,
-    {
-      at,
-      of: (s) => Math.log(s.lorentzHalfWidthPerCm),
-      value: Math.log(start.lorentzHalfWidthPerCm),
-      sigma: 1.2,
-    },
-    {
-      at: at + 1,
-      of: (s) => Math.log(s.pathDifferenceCm),
-      value: Math.log(start.pathDifferenceCm),
-      sigma: 0.5,
-    },
-    { at: at + 2, of: (s) => s.q1, value: 0.3, sigma: 0.3 },
-    { at: at + 3, of: (s) => s.q2, value: 0, sigma: 0.05 },
-  ];
 }
 
 function residualOf(
@@ -82,9 +54,7 @@ function residualOf(
 
 const squared = (column: Column): number => column.values.reduce((sum, v) => sum + v * v, 0);
 
-function penalty(problem: RegionProblem, state: RegionState): number {
-  return priors(problem).reduce((sum, p) => sum + ((p.of(state) - p.value) / p.sigma) ** 2, 0);
-}
+const penalty = (problem: RegionProblem, state: RegionState): number => penaltyOf(problem.priors, state);
 
 /** Basis columns in the order of `parameterMaps`, times the baseline, whitened. */
 function basisColumns(
@@ -201,6 +171,7 @@ export function fitRegion(
     state,
     inverse: factor === null ? new Float64Array(0) : choleskyInverse(factor, np),
     chiSquared: squared(residual),
+    cost,
     // A slow valley of the shape parameters moves no constant: a gain of half a unit of χ² is far below their σ.
     converged: lastGain < 0.5 + 1e-4 * cost,
     iterations,
@@ -215,10 +186,6 @@ function withPriors(
   state: RegionState,
   equations: { normal: Float64Array; gradient: Float64Array },
 ): { normal: Float64Array; gradient: Float64Array } {
-  const np = problem.maps.length;
-  for (const p of priors(problem)) {
-    equations.normal[p.at * np + p.at]! += 1 / p.sigma ** 2;
-    equations.gradient[p.at]! += (p.value - p.of(state)) / p.sigma ** 2;
-  }
+  addPriors(problem.priors, state, equations.normal, equations.gradient);
   return equations;
 }

@@ -2,15 +2,21 @@ import { lineWavenumberPerCm } from '../../molecule/index.ts';
 import { fitRegion, type RegionFit, type RegionProblem } from './fit-region.ts';
 import { correlatedCovariance } from './influence.ts';
 import { foreignRanges, lineDistances, pointResiduals, robustSigma } from './foreign.ts';
-import { constantKeys } from './layout.ts';
+import { constantKeys, isMerged } from './layout.ts';
 import { linePositions } from './line-positions.ts';
-import { sharpStart, startRegion } from './region-start.ts';
+import { naturalPartners } from './natural-partners.ts';
+import { blackStart, sharpStart, startRegion } from './region-start.ts';
 import type { ForwardBand, ForwardFit, ForwardInput, ForwardOutcome } from './types.ts';
 import { whiteningFilter } from './whiten.ts';
 
 /** Room beside the outermost lines of a region, in line widths and in cm-1. */
 const padWidths = 8;
 const padPerCm = 6;
+/**
+ * σ of the centre of a merged doublet in units of its splitting: stray light or a clipped floor changes how black its partners look,
+ * and with it their shares, by some per cent.
+ */
+const mergedCentreShare = 0.015;
 
 /**
  * Constants of bands from the raw points: lines of Beer and Lambert → instrument → transmittance × local baseline, all fitted at once.
@@ -22,8 +28,9 @@ const padPerCm = 6;
  * @returns constants with joint covariance and single lines, or why there is none.
  */
 export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
-  const { prepared, bands } = input;
-  const positions = bands.flatMap((b) => b.ms.map((m) => lineWavenumberPerCm(b.constants, m)));
+  const { prepared } = input;
+  const bands = [...input.bands, ...naturalPartners(prepared, input.bands)];
+  const positions = input.bands.flatMap((b) => b.ms.map((m) => lineWavenumberPerCm(b.constants, m)));
   if (positions.length < 4)
     return { outcome: 'too-few-lines', reason: `${positions.length} lines are too few for a band` };
   const width = prepared.resolutionPerCm ?? 4 * prepared.stepPerCm;
@@ -39,6 +46,11 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
     const other = fitRegion(problem, sharpStart(prepared, problem), weights, plain, 16);
     if (other.chiSquared < first.chiSquared) first = other;
   }
+  // Merged partners: thin and black lines can look alike; the better one counts.
+  if (bands.some(isMerged)) {
+    const other = fitRegion(problem, blackStart(problem, first.state), weights, plain, 24);
+    if (other.inverse.length > 0 && other.cost < first.cost) first = other;
+  }
   if (first.inverse.length === 0)
     return { outcome: 'rank-deficient', reason: 'the spectrum cannot tell the constants apart' };
   const leftOut = foreignRanges(problem, first, width);
@@ -48,7 +60,8 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
   if (fit.inverse.length === 0)
     return { outcome: 'rank-deficient', reason: 'the spectrum cannot tell the constants apart' };
   if (!fit.converged) return { outcome: 'not-converged', reason: 'the model of the spectrum did not settle' };
-  return result(problem, fit, weights, width, first.iterations + fit.iterations, leftOut);
+  const iterations = first.iterations + fit.iterations;
+  return asked(result(problem, fit, weights, width, iterations, leftOut), input.bands.length, bands.length);
 }
 
 function maskRange(problem: RegionProblem, weights: Float64Array, from: number, to: number): void {
@@ -127,6 +140,17 @@ function result(
   };
 }
 
+/** The result without the bands that only stood in the background. */
+function asked(fit: ForwardFit, count: number, all: number): ForwardFit {
+  const n = 5 * count;
+  const covariance = Float64Array.from(
+    { length: n * n },
+    (_, k) => fit.covariance[Math.floor(k / n) * 5 * all + (k % n)]!,
+  );
+  const lines = fit.lines.filter((l) => l.bandIndex < count);
+  return { ...fit, constants: fit.constants.slice(0, count), covariance, lines };
+}
+
 const median = (values: Float64Array): number => values.toSorted()[values.length >> 1] ?? 0;
 
 /** Joint covariance of the constants of all bands; a follower moves with its leader. */
@@ -152,6 +176,13 @@ function constantsCovariance(problem: RegionProblem, fitted: Float64Array, scale
       covariance[i * n + j] = sum * scale * scale;
     }
   }
+  problem.bands.forEach((band, i) => {
+    if (!isMerged(band)) return;
+    const { leader } = band.follows!;
+    const splitting = band.constants.bandOriginPerCm - problem.bands[leader]!.constants.bandOriginPerCm;
+    const variance = (mergedCentreShare * splitting) ** 2;
+    for (const a of [i, leader]) for (const b of [i, leader]) covariance[5 * a * n + 5 * b]! += variance;
+  });
   return covariance;
 }
 

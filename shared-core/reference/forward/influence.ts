@@ -1,5 +1,6 @@
 import { autocorrelation } from './whiten.ts';
-import { priors, type RegionFit, type RegionProblem } from './fit-region.ts';
+import type { RegionFit, RegionProblem } from './fit-region.ts';
+import { priorProduct } from './priors.ts';
 
 /** Delays, in points, over which what is left of the correlation is followed. */
 const followedPoints = 48;
@@ -30,14 +31,13 @@ export function correlatedCovariance(
   const correlation = residualCorrelation(fit, weights, np);
   const influences = Array.from({ length: count }, (_, c) => influenceOf(problem, fit, c));
   const carried = influences.map((h) => convolved(h, correlation));
-  const known = priors(problem);
+  const rows = influences.map((_, c) => fit.inverse.subarray(c * np, (c + 1) * np));
   const ofConstants = new Float64Array(count * count);
   for (let a = 0; a < count; a++) {
     for (let b = a; b < count; b++) {
       let sum = 0;
       for (let i = 0; i < weights.length; i++) sum += influences[a]![i]! * carried[b]![i]!;
-      for (const p of known)
-        sum += (fit.inverse[a * np + p.at]! * fit.inverse[b * np + p.at]!) / p.sigma ** 2;
+      sum += priorProduct(problem.priors, rows[a]!, rows[b]!);
       ofConstants[a * count + b] = sum;
       ofConstants[b * count + a] = sum;
     }

@@ -149,3 +149,9 @@ export function lineCentres(
     (line, i) => freeCentres.get(i) ?? lineWavenumberPerCm(constants[line.bandIndex]!, line.m),
   );
 }
+
+/** A follower with at least this share of its leader is a merged partner; rarer ones only stand in the background. */
+const mergedShare = 0.05;
+
+export const isMerged = (band: ForwardBand): boolean =>
+  band.follows !== undefined && band.follows.strengthRatio > mergedShare;

@@ -34,6 +34,9 @@ export interface ModelValues {
 /** A wing of a line is followed until its optical depth falls to this. */
 const wingDepth = 3e-5;
 
+/** Derivatives by single lines are followed until the response falls to this share; the model itself has no such end. */
+const columnShare = 4e-3;
+
 /**
  * Transmittance behind the instrument: T = K ∗ exp(−Σ s_i L(ν − ν_i)), L(δ) = (γ/π)/(δ² + γ²), K the instrument's response.
  *
@@ -61,7 +64,11 @@ export function modelTransmittance(
   const w = weightingOf(state, grid);
   const first = filtered(re, im, w.a, grid);
   const { byPath, byQ1, byQ2 } = instrumentDerivatives(re, im, w, grid, count);
-  const kernel = kernelTable(state.instrument, grid.stepPerCm, kernelReachPerCm(state.instrument, 1e-3));
+  const kernel = kernelTable(
+    state.instrument,
+    grid.stepPerCm,
+    kernelReachPerCm(state.instrument, columnShare),
+  );
   const byCentre: Column[] = [];
   const byStrength: Column[] = [];
   state.centresPerCm.forEach((centre, i) => {
