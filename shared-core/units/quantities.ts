@@ -37,11 +37,30 @@ export const quantities: Readonly<Record<QuantityKey, QuantityInfo>> = {
   D0: wave('D0', 'dissociation energy from v = 0', 5000, 120000),
 };
 
+/** Units written out, English, German, French, Spanish. */
+const spelled: readonly (readonly [string, RegExp])[] = [
+  [
+    'cm-1',
+    /(?:reciprocal|inverse|reziproke|inversos?) ?(?:centim[eèé]t(?:re|er|ro)s?|zentimeter)|wave ?numbers?|wellenzahl(?:en)?/,
+  ],
+  ['N/m', /newtons? ?(?:per|pro|par|por|\/) ?m[eèé]t(?:re|er|ro)s?/],
+  ['dyn/cm', /dyn[eaes]* ?(?:per|pro|par|por|\/) ?(?:centim[eèé]t(?:re|er|ro)s?|zentimeter|cm)/],
+  ['pm', /p[ik]+[oó]?m[eèé]t(?:re|er|ro)s?|pic[oó]m[eèé]t(?:re|er|ro)s?/],
+  ['nm', /nan[oó]m[eèé]t(?:re|er|ro)s?/],
+  ['m', /(?<![a-zèéó])m[eèé]t(?:re|er|ro)s?/],
+];
+const unitWords = new RegExp(spelled.map(([, pattern]) => `(?:${pattern.source})(?![a-z])`).join('|'), 'gi');
+const unitOfWord = (word: string): string =>
+  spelled.find(([, pattern]) => new RegExp(`^(?:${pattern.source})$`, 'i').test(word))?.[0] ?? word;
+
 /** A unit as written, reduced to letters, digits and signs that can be compared. */
 export function normalUnit(text: string): string {
   return text
     .normalize('NFKC')
     .replace(/[−–—‐‑]/g, '-')
+    .replace(/\\(mathrm|text|rm|cdot|,)/g, ' ')
+    .replace(/\$/g, '')
+    .replace(unitWords, (word) => unitOfWord(word))
     .replace(/[Åå]ngstr(ö|oe|o)ms?|angstr(ö|oe|o)ms?/giu, 'A')
     .replace(/Å/g, 'A')
     .replace(/[µμ]/g, 'u')
@@ -80,9 +99,46 @@ const factors: Readonly<Record<StandardUnit, Factors>> = {
  */
 export function unitFactor(unit: string, standard: StandardUnit): number | null {
   const table = factors[standard];
+  const scaled = /^(?:x ?)?10 ?([+-]?\d{1,3}) (.+)$/.exec(normalUnit(unit));
+  // "10⁻⁴ cm⁻¹" as a unit: the numbers below it are to be multiplied.
+  if (scaled !== null) {
+    const plainFactor = unitFactor(scaled[2]!, standard);
+    return plainFactor === null ? null : Number(`${plainFactor}e${Number(scaled[1])}`);
+  }
   const normal = normalUnit(unit);
   const own = (key: string): number | null => (Object.hasOwn(table, key) ? table[key]! : null);
-  return own(normal) ?? own(normal.replace(/ ?\/ ?/g, '/')) ?? own(normal.replace(/\s/g, '')) ?? null;
+  return (
+    own(normal) ??
+    own(normal.replace(/ ?\/ ?/g, '/')) ??
+    own(normal.replace(/\s/g, '')) ??
+    anyCase(table, normal)
+  );
+}
+
+/** Units whose letters mean the same in capitals ("CM-1", "PM"); those whose prefix would change are left out. */
+const caseless = ['cm-1', '1/cm', 'm-1', 'GHz', 'MHz', 'THz', 'kJ/mol', 'pm', 'nm', 'N/m', 'N m-1', 'dyn/cm', 'mdyn/A', 'amu', 'kg m2']; // prettier-ignore
+function anyCase(table: Factors, normal: string): number | null {
+  const key = caseless.find((k) => k.toLowerCase() === normal.toLowerCase());
+  return key !== undefined && Object.hasOwn(table, key) ? table[key]! : null;
+}
+
+/** Units in which a quantity is commonly handed in. */
+export const commonUnits: Readonly<Record<StandardUnit, readonly string[]>> = {
+  'cm-1': ['cm-1', 'GHz', 'm-1'],
+  pm: ['pm', 'Å', 'nm', 'm'],
+  'N/m': ['N/m', 'dyn/cm', 'mdyn/Å'],
+  'kg m2': ['kg m2', 'g cm2'],
+  u: ['u', 'kg'],
+};
+
+/** Common units in which a number has a usual size for the quantity; wavenumbers without a unit are in cm-1 by common practice where that fits. */
+export function unitsThatFit(value: number, key: QuantityKey): readonly string[] {
+  const { standardUnit, usual } = quantities[key];
+  const fits = commonUnits[standardUnit].filter((unit) => {
+    const size = Math.abs(value) * unitFactor(unit, standardUnit)!;
+    return size >= usual[0] && size <= usual[1];
+  });
+  return standardUnit === 'cm-1' && fits.includes('cm-1') ? ['cm-1'] : fits;
 }
 
 /** A unit as people write it on screen. */

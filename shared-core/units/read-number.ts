@@ -21,10 +21,13 @@ export interface ReadNumberOptions {
   readonly storedAsNumber?: boolean;
   /** Range in which the value is expected, in the unit in which it is written: settles a comma that may be either sign. */
   readonly expected?: readonly [number, number];
+  /** Decimal sign that the writer uses elsewhere: settles the same. */
+  readonly decimalSign?: '.' | ',' | null;
 }
 
 const superscripts: Readonly<Record<string, string>> = { '⁰': '0', '¹': '1', '²': '2', '³': '3', '⁴': '4', '⁵': '5', '⁶': '6', '⁷': '7', '⁸': '8', '⁹': '9', '⁻': '-', '⁺': '+' }; // prettier-ignore
-const notGiven = /^(|-|–|—|n\/?a|none|keine?|nil|\?|\.|not given|not determined|n\.d\.?|nan|null)$/i;
+const notGiven =
+  /^(|-+|[–—]+|\/|n\/?a|n\. ?a\.?|none|keine?|k\. ?a\.?|nil|\?+|\.+|not (given|determined|measured)|n\.? ?d\.?|s\/d|nan|null)$/i;
 
 /** Blanks of every width, real minus signs and raised digits become plain ones; signs for "about" go. */
 function plain(text: string): string {
@@ -37,6 +40,8 @@ function plain(text: string): string {
     .replace(/[\u00a0\u1680\u2000-\u200a\u202f\u205f\u3000]/g, ' ')
     .replace(/[\u200b\ufeff]/g, '')
     .replace(/[−–‒﹣－]/g, '-')
+    .replace(/[’‘ʼ]/g, "'")
+    .replace(/[，]/g, ',')
     .replace(/^\s*(≈|~|≃|∼|ca\.?|circa|about|approx\.?|=|:)\s*/i, '')
     .trim();
 }
@@ -53,54 +58,127 @@ const powerPattern =
  * @returns the number with what stands behind it, 'not given' for an empty cell or a dash, or a reason why it cannot be read.
  */
 export function readNumber(text: string, options: ReadNumberOptions = {}): ReadNumberOutcome {
-  let rest = plain(text);
-  if (notGiven.test(rest)) return { state: 'not given' };
-  const match = numberPattern.exec(rest);
-  if (match === null) return { state: 'unreadable', reason: `“${text.trim()}” does not begin with a number` };
-  rest = rest.slice(match[0].length);
-  const mantissa = decimal(match[2]!, text, options.expected);
-  if (typeof mantissa === 'string' && mantissa.startsWith('!'))
-    return { state: 'unreadable', reason: mantissa.slice(1) };
-  const digits = mantissa;
-  const sign = match[1] === '-' ? -1 : 1;
+  const written = plain(text);
+  const unreadable = (reason: string): ReadNumberOutcome => ({ state: 'unreadable', reason });
+  if (notGiven.test(written)) return { state: 'not given' };
+  const parts = partsOf(written);
+  if (parts === null) return unreadable(`“${text.trim()}” does not begin with a number`);
+  if (parts === 'unclear power')
+    return unreadable(`“${text.trim()}”: the power of ten may belong to one number or to both`);
+  const digits = decimal(parts.mantissa, text, options, parts.power !== null);
+  if (digits.startsWith('!')) return unreadable(digits.slice(1));
+  const exponent = parts.power ?? 0;
+  const value = parts.sign * Number(`${digits}e${exponent}`);
+  if (!Number.isFinite(value)) return unreadable(`“${text.trim()}” is beyond any number`);
+  if (/^\s*\d/.test(parts.rest)) return unreadable(`“${text.trim()}” holds more than one number`);
   const places = digits.includes('.') ? digits.length - digits.indexOf('.') - 1 : 0;
-  const bracket = /^\s?\((\d+)\)/.exec(rest);
-  if (bracket !== null) rest = rest.slice(bracket[0].length);
-  const plus = /^\s*(?:±|\+\s*\/?\s*-)\s*(\d[\d.,]*(?:[eE][+-]?\d+)?)/.exec(rest);
-  if (plus !== null) rest = rest.slice(plus[0].length);
-  // "(1.2746 ± 0.0003) × 10⁻¹⁰" has lost its opening bracket by now; the closing one goes too.
-  if (plus !== null) rest = rest.replace(/^\s*\)/, '');
-  const power = powerPattern.exec(rest);
-  if (power !== null) rest = rest.slice(power[0].length);
-  const exponent = Number(power?.[1] ?? power?.[2] ?? 0);
-  const value = sign * Number(`${digits}e${exponent}`);
-  if (!Number.isFinite(value))
-    return { state: 'unreadable', reason: `“${text.trim()}” is beyond any number` };
-  if (/^\s*[\d]/.test(rest))
-    return { state: 'unreadable', reason: `“${text.trim()}” holds more than one number` };
-  const last = Number(`1e${exponent - places}`);
+  const uncertainty = uncertaintyOf(parts, value, places);
+  if (uncertainty !== null && !Number.isFinite(uncertainty))
+    return unreadable(`the uncertainty in “${text.trim()}” cannot be read`);
   const stored = options.storedAsNumber === true;
-  const uncertainty =
-    bracket !== null
-      ? Number(bracket[1]) * last
-      : plus !== null
-        ? Number(plus[1]!.replace(',', '.')) * (plus[1]!.includes('e') ? 1 : Number(`1e${exponent}`))
-        : null;
   const bare = digits.replace('.', '').replace(/^0+/, '');
   return {
     state: 'number',
     number: {
       value,
       figures: stored ? null : Math.max(1, bare.length),
-      halfLastDigit: stored ? null : last / 2,
-      uncertainty: uncertainty !== null && Number.isFinite(uncertainty) ? uncertainty : null,
-      rest: rest.trim(),
+      halfLastDigit: stored ? null : Number(`1e${exponent - places}`) / 2,
+      uncertainty,
+      rest: parts.rest.trim(),
     },
   };
 }
 
+interface Parts {
+  readonly sign: 1 | -1;
+  readonly mantissa: string;
+  readonly power: number | null;
+  /** In brackets behind the digits: "(3)" counts last digits, "(0.03)" is a number of its own. */
+  readonly bracket: string | null;
+  readonly plusMinus: string | null;
+  /** Power of ten behind the uncertainty. */
+  readonly plusMinusPower: number;
+  readonly rest: string;
+}
+
+const bracketPattern = /^\s?\((\d+(?:[.,]\d+)?)\)/;
+const plusMinusPattern = /^\s*(?:±|\+\s*\/?\s*-)\s*((?:\d[\d.,]*|[.,]\d+)\s?%?)/;
+
+function partsOf(written: string): Parts | 'unclear power' | null {
+  // "(1.2746 ± 0.0003) × 10⁻¹⁰": the outer brackets go, what is behind them belongs to both numbers.
+  const enclosed = /^\(([^()]*(?:±|\+\s*\/?\s*-)[^()]*)\)/.exec(written);
+  let rest = enclosed === null ? written : `${enclosed[1]!.trim()} ${written.slice(enclosed[0].length)}`;
+  const take = (pattern: RegExp): RegExpExecArray | null => {
+    const match = pattern.exec(rest);
+    if (match !== null) rest = rest.slice(match[0].length);
+    return match;
+  };
+  const number = take(numberPattern);
+  if (number === null) return null;
+  const bracket = take(bracketPattern);
+  const powerBefore = take(powerPattern);
+  let plus = take(plusMinusPattern);
+  const powerBehind = powerBefore === null ? take(powerPattern) : plus === null ? null : take(powerPattern);
+  if (plus === null && bracket === null) {
+    // "10.59 cm-1 ± 0.02": the unit stands between.
+    const between = /^(\s*[^\d\s±][^±]*?)(\s*(?:±|\+\s*\/?\s*-)\s*.*)$/.exec(rest);
+    const late = between === null ? null : plusMinusPattern.exec(between[2]!);
+    if (between !== null && late !== null) {
+      plus = late;
+      const behind = between[2]!.slice(late[0].length).trim();
+      rest = behind === '' || behind === between[1]!.trim() ? between[1]! : `${between[1]!} ${behind}`;
+    }
+  }
+  const shared =
+    powerBefore === null && powerBehind !== null
+      ? enclosed !== null || plus === null || isShared(number[2]!, plus[1]!, exponentOf(powerBehind))
+      : false;
+  if (shared === null) return 'unclear power';
+  const power = powerBefore ?? (shared ? powerBehind : null);
+  return {
+    sign: number[1] === '-' ? -1 : 1,
+    mantissa: number[2]!,
+    power: power === null ? null : exponentOf(power),
+    bracket: bracket?.[1] ?? null,
+    plusMinus: plus?.[1]!.trim() ?? null,
+    plusMinusPower: plus === null || powerBehind === null ? 0 : exponentOf(powerBehind),
+    rest,
+  };
+}
+
+/**
+ * "1.2746 ± 0.0003 × 10⁻¹⁰": the power belongs to both numbers where the uncertainty alone would be far below the last digit given;
+ * "10.59 ± 2 × 10⁻²": to the uncertainty where that is of the size of the last digit; null between.
+ */
+function isShared(mantissa: string, plusMinus: string, power: number): boolean | null {
+  const places = /[.,](\d+)$/.exec(mantissa)?.[1]!.length ?? 0;
+  const inLastDigits = Number(plusMinus.replace(',', '.').replace('%', '')) * 10 ** (power + places);
+  if (inLastDigits < 0.01) return true;
+  return inLastDigits >= 0.1 && inLastDigits < 10 ** (places + 1) ? false : null;
+}
+
+const exponentOf = (match: RegExpExecArray): number => Number(match[1] ?? match[2]);
+
+/** The uncertainty in the unit of the number; null where none is written, NaN where it cannot be read. */
+function uncertaintyOf(parts: Parts, value: number, places: number): number | null {
+  const power = parts.power ?? 0;
+  const number = (t: string): number => Number(t.trim().replace(',', '.'));
+  if (parts.bracket !== null) {
+    if (/[.,]/.test(parts.bracket)) return number(`${parts.bracket.replace(',', '.')}e${power}`);
+    return Number(`${parts.bracket}e${power - places}`);
+  }
+  if (parts.plusMinus === null) return null;
+  if (parts.plusMinus.endsWith('%')) return (Math.abs(value) * number(parts.plusMinus.slice(0, -1))) / 100;
+  return number(`${parts.plusMinus.replace(',', '.')}e${parts.plusMinusPower}`);
+}
+
 /** Digits with one point; a text that begins with "!" says why they cannot be read. */
-function decimal(written: string, whole: string, expected: readonly [number, number] | undefined): string {
+function decimal(
+  written: string,
+  whole: string,
+  { expected, decimalSign }: ReadNumberOptions,
+  hasPower: boolean,
+): string {
   const digits = written.replace(/[ ']/g, '');
   const commas = (digits.match(/,/g) ?? []).length;
   const points = (digits.match(/\./g) ?? []).length;
@@ -115,7 +193,10 @@ function decimal(written: string, whole: string, expected: readonly [number, num
   if (commas > 1) return /^\d{1,3}(,\d{3})+$/.test(digits) ? digits.replaceAll(',', '') : unclear(whole);
   const asDecimal = digits.replace(',', '.');
   if (!/^[1-9]\d{0,2},\d{3}$/.test(digits)) return asDecimal;
+  // Nobody groups thousands before a power of ten.
+  if (hasPower || decimalSign === ',') return asDecimal;
   const asThousands = digits.replace(',', '');
+  if (decimalSign === '.') return asThousands;
   const fits = (v: string): boolean =>
     expected !== undefined && Number(v) >= expected[0] && Number(v) <= expected[1];
   if (fits(asDecimal) !== fits(asThousands)) return fits(asDecimal) ? asDecimal : asThousands;

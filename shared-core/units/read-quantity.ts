@@ -1,4 +1,4 @@
-import { quantities, unitFactor } from './quantities.ts';
+import { quantities, unitFactor, unitsThatFit } from './quantities.ts';
 import { readNumber } from './read-number.ts';
 import type { QuantityKey, StandardUnit } from './types.ts';
 
@@ -22,10 +22,15 @@ export interface ReadQuantityOptions {
   /** Unit of the scheme, where neither cell nor column has one. */
   readonly schemeUnit?: string | null;
   readonly storedAsNumber?: boolean;
+  /** Decimal sign that the writer uses elsewhere. */
+  readonly decimalSign?: '.' | ',' | null;
 }
 
 /**
  * Reads a cell as a quantity: number, unit, uncertainty, figures.
+ *
+ * The unit is the one in the cell, else of the column, else of the scheme; else cm-1 for wavenumbers and for the rest the only one in which
+ * the size is usual. `unit` tells which was taken.
  *
  * @returns value in the standard unit; null with a reason where it cannot be read or its unit is unknown; null without one where nothing was given.
  */
@@ -38,7 +43,11 @@ export function readQuantity(
   const fallback = options.headerUnit ?? options.schemeUnit ?? standardUnit;
   const factorOfColumn = unitFactor(fallback, standardUnit) ?? 1;
   const wide: [number, number] = [usual[0] / factorOfColumn / 30, (usual[1] / factorOfColumn) * 30];
-  const read = readNumber(text, { storedAsNumber: options.storedAsNumber ?? false, expected: wide });
+  const read = readNumber(text, {
+    storedAsNumber: options.storedAsNumber ?? false,
+    expected: wide,
+    decimalSign: options.decimalSign ?? null,
+  });
   const none = {
     text: text.trim(),
     value: null,
@@ -51,7 +60,13 @@ export function readQuantity(
   if (read.state === 'not given') return { ...none, unreadableBecause: null, given: false };
   if (read.state === 'unreadable') return { ...none, unreadableBecause: read.reason, given: true };
   const { number } = read;
-  const unit = number.rest === '' ? fallback : cleanUnit(number.rest);
+  const written = cleanUnit(number.rest);
+  const assumed = options.headerUnit ?? options.schemeUnit ?? unitBySize(number.value, key);
+  if (written === '' && assumed === null) {
+    const unreadableBecause = `“${text.trim()}” has no unit, and its size does not tell one for ${quantities[key].symbol}`;
+    return { ...none, unreadableBecause, given: true };
+  }
+  const unit = written === '' ? assumed! : written;
   const factor = unitFactor(unit, standardUnit);
   if (factor === null) {
     return {
@@ -87,6 +102,13 @@ function exact(product: number, value: number, factor: number): number {
         ),
       )
     : product;
+}
+
+/** Wavenumbers without any unit are in cm-1 by common practice; else the only unit in which the size is usual. */
+function unitBySize(value: number, key: QuantityKey): string | null {
+  if (quantities[key].standardUnit === 'cm-1') return 'cm-1';
+  const fits = unitsThatFit(value, key);
+  return fits.length === 1 ? fits[0]! : null;
 }
 
 function cleanUnit(rest: string): string {
