@@ -81,6 +81,10 @@ export async function understandIntake(context: Context, intakeId: number): Prom
     titles,
   );
   const { submissions, matches } = byHand(matched.submissions, matched.files, choices);
+  const repeated = await context.store.call('whichAreKnown', {
+    sectionId: intake.sectionId,
+    submissions,
+  });
   const known = new Set(earlier.map((f) => `${f.name}\u0000${f.sha256}`));
   const problems = new Map([
     ...read.map((r) => [r.t, r.read.problems] as const),
@@ -108,14 +112,14 @@ export async function understandIntake(context: Context, intakeId: number): Prom
       problems: (problems.get(t) ?? []).map((p) => p.text),
     })),
     matches,
-    submissions: submissions.map((s) => ({
+    submissions: submissions.map((s, i) => ({
       student: s.student,
       name: s.name,
       attempt: s.attempt,
       isotopologue: s.isotopologue,
       spectra: s.spectra,
       values: s.values.filter((v) => v.value !== null).length,
-      isNew: true,
+      isNew: repeated[i] !== true,
     })),
     missing: matched.missing
       .filter((m) => !submissions.some((s) => s.student === m.student && s.spectra.length > 0))

@@ -24,6 +24,7 @@ async function stepped(
 /** The journal of a section: every change, and the way back. */
 export const journalHandlers: Handlers<'journal.list' | 'journal.undo' | 'journal.redo'> = {
   'journal.list': async (context, { sectionId }) => {
+    await mustExist(context, sectionId);
     const rows = await context.store.call('listJournal', { sectionId });
     return rows.map((r) => ({ id: r.id, at: r.at, who: r.who, what: r.what, undone: r.undone === 1 }));
   },

@@ -54,6 +54,12 @@ export const intakeOperations = {
   listOpenIntakes: (db: Database.Database): number[] =>
     (db.prepare("SELECT id FROM intake WHERE state = 'open'").all() as { id: number }[]).map((r) => r.id),
 
+  /** Which submissions are in the section already. */
+  whichAreKnown: (
+    db: Database.Database,
+    { sectionId, submissions }: { sectionId: number; submissions: readonly Submission[] },
+  ): boolean[] => knownSubmissions(db, sectionId, submissions).map((id) => id !== null),
+
   setChoices: (db: Database.Database, { id, choices }: { id: number; choices: string }): void => {
     db.prepare('UPDATE intake SET choices = ? WHERE id = ?').run(choices, id);
   },
@@ -79,21 +85,17 @@ export const intakeOperations = {
           request.at,
         );
       }
-      const known = new Set(fingerprints(db, sectionId));
+      const knownIds = knownSubmissions(db, sectionId, request.submissions);
       let added = 0;
-      for (const s of request.submissions) {
-        if (
-          known.has(
-            fingerprint(
-              s,
-              s.values.map((v) => v.text),
-            ),
-          )
-        )
-          continue;
+      request.submissions.forEach((s, i) => {
+        const known = knownIds[i] ?? null;
+        if (known !== null) {
+          attachFirstSpectra(db, known, s, ids);
+          return;
+        }
         addSubmission(db, sectionId, s, ids, request.at, added);
         added++;
-      }
+      });
       db.prepare("UPDATE intake SET state = 'committed', ended_at = ?, record = ? WHERE id = ?").run(
         request.at,
         request.record,
@@ -131,27 +133,61 @@ function addFiles(
   return { ids, fresh };
 }
 
-/** What makes two submissions the same: student, isotopologue, attempt and every value as written. */
-function fingerprint(
-  s: { student: string; isotopologue: string | null; attempt: number },
-  texts: readonly string[],
-): string {
-  return JSON.stringify([s.student, s.isotopologue, s.attempt, texts]);
-}
-
-function fingerprints(db: Database.Database, sectionId: number): string[] {
+/**
+ * For each submission the id of the one in the section that it repeats, or null: same student and isotopologue, every value as written,
+ * and not said to be a later attempt than any that is there.
+ */
+function knownSubmissions(
+  db: Database.Database,
+  sectionId: number,
+  submissions: readonly Submission[],
+): (number | null)[] {
+  const key = (student: string, isotopologue: string | null): string =>
+    JSON.stringify([student, isotopologue]);
   const rows = db
     .prepare(
-      `SELECT p.person_key AS student, s.isotopologue, s.attempt, s.id FROM submission s JOIN person p ON p.id = s.person_id WHERE s.section_id = ?`,
+      'SELECT p.person_key AS student, s.isotopologue, s.attempt, s.id FROM submission s JOIN person p ON p.id = s.person_id WHERE s.section_id = ?',
     )
     .all(sectionId) as { student: string; isotopologue: string | null; attempt: number; id: number }[];
-  const texts = db.prepare('SELECT text FROM submitted_value WHERE submission_id = ? ORDER BY id');
-  return rows.map((r) =>
-    fingerprint(
-      r,
-      (texts.all(r.id) as { text: string }[]).map((t) => t.text),
-    ),
+  const texts = db.prepare('SELECT text FROM submitted_value WHERE submission_id = ? ORDER BY id').pluck();
+  const lastAttempt = new Map<string, number>();
+  const byContent = new Map<string, number>();
+  for (const r of rows) {
+    const own = key(r.student, r.isotopologue);
+    lastAttempt.set(own, Math.max(lastAttempt.get(own) ?? 0, r.attempt));
+    byContent.set(own + JSON.stringify(texts.all(r.id)), r.id);
+  }
+  return submissions.map((s) => {
+    const own = key(s.student, s.isotopologue);
+    if (s.attempt > (lastAttempt.get(own) ?? 0)) return null;
+    return byContent.get(own + JSON.stringify(s.values.map((v) => v.text))) ?? null;
+  });
+}
+
+/** A table that comes again with its spectra brings them to submissions that had none. */
+function attachFirstSpectra(
+  db: Database.Database,
+  submissionId: number,
+  s: Submission,
+  fileIds: ReadonlyMap<string, number>,
+): void {
+  const has = db.prepare('SELECT 1 FROM submission_file WHERE submission_id = ?').get(submissionId);
+  if (has === undefined) attachSpectra(db, submissionId, s, fileIds);
+}
+
+function attachSpectra(
+  db: Database.Database,
+  submissionId: number,
+  s: Submission,
+  fileIds: ReadonlyMap<string, number>,
+): void {
+  const link = db.prepare(
+    'INSERT OR IGNORE INTO submission_file (submission_id, file_id, position) VALUES (?, ?, ?)',
   );
+  s.spectra.forEach((name, i) => {
+    const fileId = fileIds.get(name);
+    if (fileId !== undefined) link.run(submissionId, fileId, i);
+  });
 }
 
 function addSubmission(
@@ -186,13 +222,7 @@ function addSubmission(
     submissionId,
     personId,
   );
-  s.spectra.forEach((name, i) => {
-    const fileId = fileIds.get(name);
-    if (fileId !== undefined)
-      db.prepare(
-        'INSERT OR IGNORE INTO submission_file (submission_id, file_id, position) VALUES (?, ?, ?)',
-      ).run(submissionId, fileId, i);
-  });
+  attachSpectra(db, submissionId, s, fileIds);
   const value = db.prepare(
     'INSERT INTO submitted_value (submission_id, isotopologue, quantity, text, value, uncertainty, figures, half_last_digit, unit, standard_unit, unreadable_because) VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)',
   );
