@@ -86,6 +86,7 @@ export default {
     doNotFollow: { path: 'node_modules' },
     tsConfig: { fileName: 'tests/tsconfig.json' },
     enhancedResolveOptions: {
+      exportsFields: ['exports'],
       extensions: ['.ts', '.mjs', '.js', '.vue', '.json'],
       conditionNames: ['import', 'require', 'node', 'default', 'types'],
       mainFields: ['module', 'main', 'types'],

@@ -60,7 +60,7 @@ export function assignLines(
   const bands: AssignedBand[] = [];
   let runnerUp: RunnerUp | null = null;
   let range: readonly [number, number] = [-tolerancePpm, tolerancePpm];
-  let implausible: string | null = null;
+  const refused: string[] = [];
   for (let round = 0; round < 8; round++) {
     const index: LineIndex = { lines: found, positions, free };
     const ranked = rank(
@@ -72,7 +72,7 @@ export function assignLines(
     const chosen = ranked
       .map((score) => ({ score, refined: accept(index, score, width) }))
       .find((x): x is { score: BandScore; refined: RefinedBand } => {
-        if (typeof x.refined === 'string') implausible ??= x.refined;
+        if (typeof x.refined === 'string') refused.push(x.refined);
         return typeof x.refined !== 'string';
       });
     if (chosen === undefined) break;
@@ -99,7 +99,7 @@ export function assignLines(
       bands: [],
       code: 'no-band',
       reason:
-        implausible ??
+        refused[0] ??
         `${found.length} lines stand out, but no band of ${options.candidates?.join(', ') ?? 'a listed gas'} explains them.`,
     };
   }

@@ -1,4 +1,4 @@
-import { lineWavenumberPerCm } from '../molecule/index.ts';
+import { lineWavenumberPerCm, relativeLineStrength } from '../molecule/index.ts';
 import type { BandConstants } from '../molecule/types.ts';
 import { nearest, type BandScore, type LineIndex } from './band-search.ts';
 import { fitBand, type BandLine } from './fit-band.ts';
@@ -27,7 +27,13 @@ export function refineBand(index: LineIndex, score: BandScore, widthPerCm: numbe
     constants = fit.constants;
     rms = fit.rms;
     const tolerance = Math.max(0.04, 0.12 * widthPerCm, Math.min(5 * rms, 0.5 * widthPerCm));
-    const next = matchAll(index, constants, tolerance, round < 2 ? extent(matches) + 3 : mostM);
+    const next = matchAll(
+      index,
+      constants,
+      tolerance,
+      round < 2 ? extent(matches) + 3 : mostM,
+      amountOf(index, matches, constants),
+    );
     if (next.length < 4) return null;
     if (round > 2 && same(next, matches)) break;
     matches = next;
@@ -81,12 +87,17 @@ function fitMatches(
   return jump > 3 ? null : { constants: fit.constants, rms };
 }
 
-/** Every m whose predicted line has a found one beside it; outward from the origin until six in a row are missing. */
+/**
+ * Every m whose predicted line has a found one beside it that is strong enough; outward from the origin until six in a row are missing.
+ *
+ * Far off the strength law a found line is another gas's: a factor of seven is beyond what a teaching spectrum shows, saturation aside.
+ */
 function matchAll(
   index: LineIndex,
   constants: BandConstants,
   tolerance: number,
   most: number,
+  amount: number,
 ): { m: number; line: number }[] {
   const taken = new Set<number>();
   const matches: { m: number; line: number }[] = [];
@@ -95,7 +106,11 @@ function matchAll(
     for (let j = 1; j <= most && missing < 6; j++) {
       const m = sign * j;
       const line = nearest(index, lineWavenumberPerCm(constants, m), tolerance);
-      if (line < 0 || taken.has(line)) {
+      if (
+        line < 0 ||
+        taken.has(line) ||
+        !strengthAgrees(index, line, amount * relativeLineStrength(constants, m, 296))
+      ) {
         missing++;
         continue;
       }
@@ -105,4 +120,22 @@ function matchAll(
     }
   }
   return matches.sort((a, b) => a.m - b.m);
+}
+
+function strengthAgrees(index: LineIndex, line: number, expected: number): boolean {
+  const found = index.lines[line]!;
+  const ratio = found.peakAbsorbance / expected;
+  return found.saturated ? ratio < 7 : ratio > 1 / 7 && ratio < 7;
+}
+
+/** Peak absorbance per unit of relative strength: the median over the matches. */
+function amountOf(
+  index: LineIndex,
+  matches: readonly { m: number; line: number }[],
+  constants: BandConstants,
+): number {
+  const ratios = matches
+    .map(({ m, line }) => index.lines[line]!.peakAbsorbance / relativeLineStrength(constants, m, 296))
+    .sort((a, b) => a - b);
+  return ratios[ratios.length >> 1] ?? 0;
 }

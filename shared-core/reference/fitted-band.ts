@@ -1,10 +1,7 @@
 import type { BandName } from '../assignment/types.ts';
 import type { BandConstants, Isotopologue } from '../molecule/types.ts';
 
-/** Order of the five free constants of a band in its covariance: ν̃0, B_0, B_n, D_0, D_n. */
-export const bandParameterCount = 5;
-
-/** Constants of one band of one isotopologue with their covariance (5 × 5, row-major, order above, cm-1). */
+/** Constants of one band of one isotopologue with their covariance (5 × 5, row-major, over ν̃0, B_0, B_n, D_0, D_n; cm-1). */
 export interface FittedBand {
   readonly isotopologue: Isotopologue;
   readonly band: BandName;

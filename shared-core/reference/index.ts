@@ -1,5 +1,4 @@
-export { analyseSpectrum, type SpectrumAnalysis } from './analyse-spectrum.ts';
+export { analyseSpectrum } from './analyse-spectrum.ts';
 export { combineAnalyses } from './combine.ts';
-export { analyseFile, makeReference, plainSettings, type ReferenceInput } from './make-reference.ts';
-export { referenceFor } from './reference-for.ts';
+export { makeReference, plainSettings } from './make-reference.ts';
 export type * from './types.ts';

@@ -4,7 +4,7 @@ import { analyseSpectrum, type SpectrumAnalysis } from './analyse-spectrum.ts';
 import { combineAnalyses } from './combine.ts';
 import type { Correction, FileReference, MethodSettings } from './types.ts';
 
-export interface ReferenceInput {
+interface ReferenceInput {
   /** Raw files of one submission: one, or several that belong together (an H/D pair, an overtone). */
   readonly files: readonly SourceFile[];
   readonly settings: MethodSettings;
@@ -37,7 +37,7 @@ export function makeReference(input: ReferenceInput): FileReference {
 }
 
 /** One analysis for each spectrum in a file; a refused file gives one that says why. */
-export function analyseFile(
+function analyseFile(
   file: SourceFile,
   options: { readonly corrections?: readonly Correction[]; readonly candidates?: readonly string[] },
 ): SpectrumAnalysis[] {

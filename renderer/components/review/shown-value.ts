@@ -1,4 +1,4 @@
-import type { Agreement, MarkedValue } from '../../../shared-core/marking/types.ts';
+import type { MarkedValue } from '../../../shared-core/marking/types.ts';
 
 /** What a person ruled on a value, as the review shows it. */
 export interface ShownDecision {
@@ -13,20 +13,6 @@ export interface ShownValue {
   readonly id: string;
   readonly marked: MarkedValue;
   readonly decision: ShownDecision | null;
-}
-
-const badness: Readonly<Record<Agreement, number>> = {
-  unreadable: 6,
-  outside: 5,
-  'no reference': 4,
-  'part credit': 3,
-  'not given': 2,
-  within: 0,
-};
-
-/** How much a value asks to be looked at: 0 for within, more the worse. */
-export function badnessOf(value: Pick<MarkedValue, 'agreement' | 'carriedForward'>): number {
-  return badness[value.agreement] - (value.carriedForward ? 0.5 : 0);
 }
 
 /** A flagged value asks a question that only a person answers. */
