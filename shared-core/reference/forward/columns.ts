@@ -49,7 +49,12 @@ export function normalEquations(
   const nb = columns.length;
   const np = parameters.length;
   const order = columns.map((_, i) => i).sort((i, j) => columns[i]!.start - columns[j]!.start);
-  const gram = new Map<number, number>();
+  // G·P first (basis × parameters), then Pᵀ(G·P).
+  const gp = new Float64Array(nb * np);
+  const byBasis = basisToParameters(nb, parameters);
+  const add = (i: number, j: number, value: number): void => {
+    for (const [q, coefficient] of byBasis[j]!) gp[i * np + q]! += value * coefficient;
+  };
   for (let u = 0; u < nb; u++) {
     const i = order[u]!;
     const end = columns[i]!.start + columns[i]!.values.length;
@@ -57,19 +62,9 @@ export function normalEquations(
       const j = order[v]!;
       if (columns[j]!.start >= end) break;
       const value = dot(columns[i]!, columns[j]!);
-      if (value !== 0) {
-        gram.set(i * nb + j, value);
-        gram.set(j * nb + i, value);
-      }
+      add(i, j, value);
+      if (i !== j) add(j, i, value);
     }
-  }
-  // G·P first (basis × parameters), then Pᵀ(G·P).
-  const gp = new Float64Array(nb * np);
-  const byBasis = basisToParameters(nb, parameters);
-  for (const [key, value] of gram) {
-    const i = Math.floor(key / nb);
-    const j = key % nb;
-    for (const [q, coefficient] of byBasis[j]!) gp[i * np + q]! += value * coefficient;
   }
   const normal = new Float64Array(np * np);
   const gradient = new Float64Array(np);
