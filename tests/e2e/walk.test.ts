@@ -54,15 +54,13 @@ describe.skipIf(noBrowser)('the whole path in a real browser', () => {
     const files = exampleSection(1).files.filter((f) => f.name !== 'what-was-put-in.csv');
     await page.getByTestId('files').waitFor({ state: 'attached' });
     const send = (some: typeof files): Promise<void> =>
-      page
-        .getByTestId('files')
-        .setInputFiles(
-          some.map((f) => ({
-            name: f.name.slice(f.name.lastIndexOf('/') + 1),
-            mimeType: 'application/octet-stream',
-            buffer: Buffer.from(f.bytes),
-          })),
-        );
+      page.getByTestId('files').setInputFiles(
+        some.map((f) => ({
+          name: f.name.slice(f.name.lastIndexOf('/') + 1),
+          mimeType: 'application/octet-stream',
+          buffer: Buffer.from(f.bytes),
+        })),
+      );
     await send(files.slice(0, 6));
     await page.getByText('What each file became').waitFor({ timeout: 60_000 });
     // In the middle of intake: what came in waits on disk.
