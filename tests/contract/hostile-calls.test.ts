@@ -12,8 +12,7 @@ const folder = mkdtempSync(join(tmpdir(), 'rovimark-hostile-'));
 let backend: Backend;
 let sectionId = 0;
 
-const ask = async (method: unknown, input: unknown): Promise<Envelope<unknown>> =>
-  (await backend.dispatch(method, input)) as Envelope<unknown>;
+const ask = (method: unknown, input: unknown): Promise<Envelope<unknown>> => backend.dispatch(method, input);
 const valueOf = async (method: string, input: unknown): Promise<unknown> => {
   const reply = await ask(method, input);
   if (!reply.ok) throw new Error(reply.error.message);

@@ -104,7 +104,7 @@ export const ipcRenderer = {
     return structuredClone(await handler(event, ...(structuredClone(args) as unknown[])));
   },
   on: (channel: string, listener: (event: unknown, payload: unknown) => void): void => {
-    const set = rendererListeners.get(channel) ?? new Set();
+    const set = rendererListeners.get(channel) ?? new Set<(event: unknown, payload: unknown) => void>();
     set.add(listener);
     rendererListeners.set(channel, set);
   },

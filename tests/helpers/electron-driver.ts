@@ -24,7 +24,7 @@ for (
 )
   await new Promise((resolve) => setTimeout(resolve, 50));
 createRequire(import.meta.url)(join(built, 'preload', 'preload.cjs'));
-const bridge = recorded.exposed['rovimark'] as Bridge;
+const bridge = recorded.exposed['rovimark'] as Bridge | undefined;
 const window = recorded.windows[0];
 
 async function reach(url: string): Promise<{ status: number; policy: string | null }> {
@@ -47,7 +47,7 @@ const report: Record<string, unknown> = {
   quit: recorded.quit,
   windows: recorded.windows.length,
 };
-if (window !== undefined) {
+if (window !== undefined && bridge !== undefined) {
   const events: unknown[] = [];
   const off = bridge.onEvent((event) => events.push(event));
   const made = await bridge.call('sections.create', { title: 'Over the bridge' });
