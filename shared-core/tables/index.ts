@@ -1,5 +1,7 @@
+export * from './fill-column.ts';
 export * from './match-files.ts';
 export * from './read-lines.ts';
+export * from './read-roster.ts';
 export * from './read-submissions.ts';
 export * from './read-table.ts';
 export * from './understand-header.ts';

@@ -1,7 +1,9 @@
 import type { Submission, SubmittedLine, SubmittedValue } from '../marking/types.ts';
 import { isotopologue as isotopologueNamed, isotopologuesOf } from '../molecule/index.ts';
 import { readQuantity } from '../units/index.ts';
+import { decimalSignOf } from './decimal-sign.ts';
 import { quantityKeys, type QuantityKey } from '../units/types.ts';
+import { isSummary, repeatsHeader } from './odd-rows.ts';
 import type { Cell, ColumnRole, RawTable, ReadSubmissionsResult, TableUnderstanding } from './types.ts';
 import { understandHeader } from './understand-header.ts';
 
@@ -16,6 +18,8 @@ interface Row {
   /** 1-based, as in the file. */
   readonly number: number;
   readonly cells: readonly Cell[];
+  /** Decimal sign of this writer, where the row or the whole table shows it. */
+  readonly decimalSign: '.' | ',' | null;
 }
 
 /**
@@ -28,8 +32,11 @@ export function readSubmissions(
   understanding: TableUnderstanding,
   options: ReadSubmissionsOptions = {},
 ): ReadSubmissionsResult {
+  const commas = table.rows.slice(understanding.headerRow + 1).map(decimalSignOf);
+  // One writer's point in a table of commas settles nothing for the others.
+  const tableSign = commas.includes(',') && !commas.includes('.') ? ',' : null;
   const rows = table.rows
-    .map((cells, i): Row => ({ number: i + 1, cells }))
+    .map((cells, i): Row => ({ number: i + 1, cells, decimalSign: decimalSignOf(cells) ?? tableSign }))
     .slice(understanding.headerRow + 1)
     .filter((row) => row.cells.some((c) => c.text !== ''));
   const problems: { row: number; text: string }[] = [];
@@ -37,7 +44,15 @@ export function readSubmissions(
   const drafts: Submission[] = [];
   for (const row of rows) {
     const text = (role: ColumnRole['role']): string => cellOf(row, understanding, role);
-    const student = text('student') || text('name');
+    const student = text('student') || namesOf(row, understanding);
+    if (repeatsHeader(row.cells, understanding)) continue;
+    if (isSummary(student)) {
+      problems.push({
+        row: row.number,
+        text: `Row ${row.number} (“${student}”) is a summary, no submission; it is left out.`,
+      });
+      continue;
+    }
     if (student === '') {
       problems.push({
         row: row.number,
@@ -49,9 +64,26 @@ export function readSubmissions(
     const values = long
       ? longValue(row, understanding, isotopologue, options, problems)
       : wideValues(row, understanding, isotopologue, options);
-    const same = drafts.findIndex((d) => d.student === student && d.isotopologue === isotopologue && long);
-    if (same >= 0) drafts[same] = { ...drafts[same]!, values: [...drafts[same]!.values, ...values] };
-    else drafts.push(draft(student, isotopologue, values, text, options));
+    const attempt = attemptOf(text('attempt'));
+    const same = long
+      ? drafts.findIndex(
+          (d) => d.student === student && d.isotopologue === isotopologue && d.attempt === attempt,
+        )
+      : -1;
+    if (
+      same >= 0 &&
+      values.some(
+        (v) =>
+          v.value !== null &&
+          drafts[same]!.values.some((w) => w.quantity === v.quantity && w.isotopologue === v.isotopologue),
+      )
+    )
+      problems.push({
+        row: row.number,
+        text: `Row ${row.number} gives ${values[0]!.quantity} of ${student} a second time without an attempt; the first stays.`,
+      });
+    else if (same >= 0) drafts[same] = { ...drafts[same]!, values: [...drafts[same]!.values, ...values] };
+    else drafts.push(draft(student, isotopologue, values, row, understanding, options));
   }
   return { submissions: numbered(drafts, understanding), problems };
 }
@@ -60,20 +92,22 @@ function draft(
   student: string,
   isotopologue: string | null,
   values: readonly SubmittedValue[],
-  text: (role: ColumnRole['role']) => string,
+  row: Row,
+  understanding: TableUnderstanding,
   options: ReadSubmissionsOptions,
 ): Submission {
-  const attempt = Number.parseInt(text('attempt'), 10);
+  const text = (role: ColumnRole['role']): string => cellOf(row, understanding, role);
   const lineCount = Number.parseInt(text('line-count'), 10);
   return {
     student,
-    name: text('name') || null,
+    name: namesOf(row, understanding) || null,
     group: text('group') || null,
-    attempt: Number.isFinite(attempt) && attempt > 0 ? attempt : 0,
+    attempt: attemptOf(text('attempt')),
     received: text('received') || null,
     isotopologue,
-    spectra: text('spectrum')
-      .split(';')
+    spectra: understanding.columns
+      .filter((c) => c.role.role === 'spectrum')
+      .flatMap((c) => (row.cells[c.index]?.text ?? '').split(/[;\n|]/))
       .map((s) => s.trim())
       .filter((s) => s !== ''),
     values,
@@ -94,6 +128,21 @@ function numbered(drafts: readonly Submission[], understanding: TableUnderstandi
     counts.set(key, count);
     return { ...d, attempt: d.attempt > 0 && hasColumn ? d.attempt : count };
   });
+}
+
+const attemptOf = (text: string): number => {
+  const attempt = Number.parseInt(text.replace(/^\D+/, ''), 10);
+  return Number.isFinite(attempt) && attempt > 0 ? attempt : 0;
+};
+
+/** First and family name from one column or two; a family name that comes first goes behind. */
+function namesOf(row: Row, understanding: TableUnderstanding): string {
+  const columns = understanding.columns.filter((c) => c.role.role === 'name');
+  const isFirst = (header: string): boolean => /first|given|vorname|pr[ée]nom/i.test(header);
+  return [...columns.filter((c) => isFirst(c.header)), ...columns.filter((c) => !isFirst(c.header))]
+    .map((c) => row.cells[c.index]?.text ?? '')
+    .filter((t) => t !== '')
+    .join(' ');
 }
 
 function cellOf(row: Row, understanding: TableUnderstanding, role: ColumnRole['role']): string {
@@ -125,8 +174,44 @@ function wideValues(
     if (column.role.role !== 'quantity') return [];
     const { quantity, unit } = column.role;
     const cell = row.cells[column.index] ?? { text: '', storedAsNumber: false };
-    return [valueOf(cell, quantity, unit, column.role.isotopologue ?? isotopologue, options)];
+    const value = valueOf(row, cell, quantity, unit, column.role.isotopologue ?? isotopologue, options);
+    return [
+      withUncertaintyColumn(value, uncertaintyCell(row, understanding, column.index, value), unit, row),
+    ];
   });
+}
+
+/** The cell of the uncertainty column that names this quantity, or that stands unnamed to the right of it. */
+function uncertaintyCell(
+  row: Row,
+  understanding: TableUnderstanding,
+  index: number,
+  value: SubmittedValue,
+): Cell | null {
+  const columns = understanding.columns.filter((c) => c.role.role === 'uncertainty');
+  const role = understanding.columns[index]!.role;
+  const own = role.role === 'quantity' ? role.isotopologue : null;
+  const named = columns.find((c) => {
+    const { beside } = understandHeader(c.header);
+    return beside?.quantity === value.quantity && beside.isotopologue === own;
+  });
+  const next = columns.find((c) => c.index === index + 1 && understandHeader(c.header).beside === null);
+  const column = named ?? next;
+  return column === undefined ? null : (row.cells[column.index] ?? null);
+}
+
+function withUncertaintyColumn(
+  value: SubmittedValue,
+  cell: Cell | null,
+  unit: string | null,
+  row: Row,
+): SubmittedValue {
+  if (cell === null || value.value === null || value.uncertainty !== null) return value;
+  const read = readQuantity(cell.text.replace(/^\s*(±|\+\s*\/?\s*-)\s*/, ''), value.quantity, {
+    headerUnit: unit ?? value.unit,
+    decimalSign: row.decimalSign,
+  });
+  return read.value === null || read.value <= 0 ? value : { ...value, uncertainty: read.value };
 }
 
 function longValue(
@@ -154,10 +239,15 @@ function longValue(
     storedAsNumber: false,
   };
   const unit = cellOf(row, understanding, 'unit') || (header?.role === 'quantity' ? header.unit : null);
-  return [valueOf(cell, key, unit, own ?? isotopologue, options)];
+  const value = valueOf(row, cell, key, unit, own ?? isotopologue, options);
+  const beside = understanding.columns.find((c) => c.role.role === 'uncertainty');
+  return [
+    withUncertaintyColumn(value, beside === undefined ? null : (row.cells[beside.index] ?? null), unit, row),
+  ];
 }
 
 function valueOf(
+  row: Row,
   cell: Cell,
   quantity: QuantityKey,
   headerUnit: string | null,
@@ -168,6 +258,7 @@ function valueOf(
     headerUnit,
     schemeUnit: options.schemeUnitOf?.(quantity) ?? null,
     storedAsNumber: cell.storedAsNumber,
+    decimalSign: row.decimalSign,
   });
   const { text, value, uncertainty, figures, halfLastDigit, unit, standardUnit, unreadableBecause } = read;
   return {

@@ -1,6 +1,8 @@
-import { quantities, readNumber, unitFactor } from '../units/index.ts';
+import { commonUnits, quantities, readNumber, unitFactor, unitsThatFit } from '../units/index.ts';
 import type { QuantityKey } from '../units/types.ts';
 import type { ColumnRole, ColumnUnderstanding, RawTable, TableKind, TableUnderstanding } from './types.ts';
+import { findHeader } from './header-rows.ts';
+import { settleColumns } from './settle-columns.ts';
 import { understandHeader } from './understand-header.ts';
 
 export interface UnderstandOptions {
@@ -8,8 +10,6 @@ export interface UnderstandOptions {
   readonly remembered?: Readonly<Record<string, ColumnRole>>;
 }
 
-/** Rows at the top among which the header is looked for. */
-const headerRows = 12;
 const shownValues = 4;
 
 /**
@@ -18,47 +18,21 @@ const shownValues = 4;
  */
 export function understandTable(table: RawTable, options: UnderstandOptions = {}): TableUnderstanding {
   const width = Math.max(0, ...table.rows.map((r) => r.length));
-  const header = bestHeader(table);
-  const body = table.rows.slice(header + 1).filter((row) => row.some((c) => c.text !== ''));
-  const columns = Array.from({ length: width }, (_, index): ColumnUnderstanding => {
-    const text = header < 0 ? '' : headerText(table, header, index);
+  const header = findHeader(table, width);
+  const body = table.rows.slice(header.last + 1).filter((row) => row.some((c) => c.text !== ''));
+  const columns = header.texts.map((text, index) => {
     const cells = body.map((r) => r[index]?.text ?? '');
     return understandColumn(text, index, cells, options.remembered?.[text]);
   });
   const kind = kindOf(columns);
+  const isSet = (c: ColumnUnderstanding): boolean => options.remembered?.[c.header] !== undefined;
   return {
     kind: kind.kind,
     reason: kind.reason,
-    headerRow: header,
-    columns: settleKind(columns, kind.kind),
+    headerRow: header.last,
+    columns: settleColumns(settleKind(columns, kind.kind), kind.kind, isSet),
     notes: [],
   };
-}
-
-/** A merged cell above a header ("H35Cl" over "B0", "Be") belongs to it. */
-function headerText(table: RawTable, header: number, index: number): string {
-  const own = table.rows[header]![index]?.text ?? '';
-  const above = header > 0 ? table.rows[header - 1]! : [];
-  // A title row holds one cell; a row of merged headings several, with blanks between.
-  if (above.filter((c) => c.text !== '').length < 2) return own;
-  for (let i = index; i >= 0; i--) {
-    const text = above[i]?.text ?? '';
-    if (text !== '') return understandHeader(own).role?.role === 'quantity' ? `${own} ${text}` : own;
-  }
-  return own;
-}
-
-function bestHeader(table: RawTable): number {
-  let best = -1;
-  let most = 1;
-  table.rows.slice(0, headerRows).forEach((row, i) => {
-    const known = row.filter((c) => c.text !== '' && understandHeader(c.text).role !== null).length;
-    if (known > most) {
-      most = known;
-      best = i;
-    }
-  });
-  return best;
 }
 
 function understandColumn(
@@ -73,12 +47,31 @@ function understandColumn(
     return { ...base, role: remembered, reason: 'as set by hand before', ambiguous: false, alternatives: [] };
   }
   const reading = understandHeader(header);
-  if (reading.role === null) {
-    return { ...base, role: { role: 'ignore' }, reason: reading.reason, ambiguous: false, alternatives: [] };
-  }
+  const { reason, alternatives } = reading;
+  if (reading.role === null)
+    return { ...base, role: { role: 'ignore' }, reason, ...askedIfNumeric(header, cells, alternatives) };
   if (reading.role.role !== 'quantity')
-    return { ...base, role: reading.role, reason: reading.reason, ambiguous: false, alternatives: [] };
-  return quantityColumn(base, reading.role, reading.reason, reading.alternatives, cells);
+    return { ...base, role: reading.role, reason, ambiguous: false, alternatives };
+  return quantityColumn(base, reading.role, reason, alternatives, cells);
+}
+
+/** A column that nobody can name but that holds numbers is asked about where its unit, or a missing header, may hide a value. */
+function askedIfNumeric(
+  header: string,
+  cells: readonly string[],
+  alternatives: readonly ColumnRole[],
+): { ambiguous: boolean; alternatives: readonly ColumnRole[] } {
+  const filled = cells.filter((c) => c !== '');
+  const numbers = filled
+    .map((c) => readNumber(c))
+    .flatMap((r) => (r.state === 'number' ? [r.number.value] : []));
+  const most = numbers.length > 0 && numbers.length > 0.5 * filled.length;
+  const rowNumbers = numbers.length > 1 && numbers.every((n, i) => i === 0 || n === numbers[i - 1]! + 1);
+  if (header === '') return { ambiguous: most && !rowNumbers, alternatives };
+  const fitting = alternatives.filter(
+    (a) => a.role !== 'quantity' || shareFitting(cells, a.quantity, a.unit) > 0.5,
+  );
+  return { ambiguous: most && fitting.length > 0, alternatives: fitting };
 }
 
 /** A column of values: the sizes settle between readings, and stand in for a unit that is not written. */
@@ -125,7 +118,7 @@ const cellsCarryUnits = (cells: readonly string[]): boolean => {
 
 function shareFitting(cells: readonly string[], key: QuantityKey, unit: string | null): number {
   const { usual, standardUnit } = quantities[key];
-  const units = unit === null ? candidateUnits[standardUnit] : [unit];
+  const units = unit === null ? commonUnits[standardUnit] : [unit];
   const values = cells
     .map((c) => readNumber(c))
     .flatMap((r) => (r.state === 'number' ? [Math.abs(r.number.value)] : []));
@@ -138,20 +131,16 @@ function shareFitting(cells: readonly string[], key: QuantityKey, unit: string |
   return values.filter(fits).length / values.length;
 }
 
-const candidateUnits = { 'cm-1': ['cm-1', 'GHz', 'm-1'], pm: ['pm', 'Å', 'nm', 'm'], 'N/m': ['N/m', 'dyn/cm', 'mdyn/Å'], 'kg m2': ['kg m2', 'g cm2'], u: ['u', 'kg'] } as const; // prettier-ignore
-
 /** Units in which most values have a usual size. */
 function unitsBySize(cells: readonly string[], key: QuantityKey): string[] {
-  const { usual, standardUnit } = quantities[key];
   const values = cells
     .map((c) => readNumber(c))
     .flatMap((r) => (r.state === 'number' ? [Math.abs(r.number.value)] : []));
   if (values.length === 0) return [];
-  return candidateUnits[standardUnit].filter((unit) => {
-    const factor = unitFactor(unit, standardUnit)!;
-    const inside = values.filter((v) => v * factor >= usual[0] && v * factor <= usual[1]).length;
-    return inside > 0.6 * values.length;
-  });
+  const fits = commonUnits[quantities[key].standardUnit].filter(
+    (unit) => values.filter((v) => unitsThatFit(v, key).includes(unit)).length > 0.6 * values.length,
+  );
+  return fits;
 }
 
 function kindOf(columns: readonly ColumnUnderstanding[]): { kind: TableKind; reason: string } {

@@ -53,7 +53,7 @@ export function gradesTable(
       ? columns
       : options.columns.flatMap((n) => columns.filter((c) => c.name === n));
   return [
-    ordered.map((c) => c.name),
+    ordered.map((c) => harmless(c.name)),
     ...rows.map((row) => ordered.map((c) => harmless(c.cell(row), c.isText))),
   ];
 }
