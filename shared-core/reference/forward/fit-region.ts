@@ -11,6 +11,13 @@ import type { ForwardBand } from './types.ts';
 
 /** A step that gains less than this in χ² moves no constant by more than a tenth of its σ. */
 const settled = 0.01;
+/**
+ * In a slow valley of the shape (width × strength of black lines) a lightly damped step that moves every constant by less than this
+ * share of its σ is taken for the end; as many such steps as might follow go into σ.
+ */
+const settledShare = 0.15;
+const stepsLeftOut = 10;
+const lightDamping = 1e-2;
 
 export interface RegionProblem {
   readonly bands: readonly ForwardBand[];
@@ -33,6 +40,8 @@ export interface RegionFit {
   readonly cost: number;
   /** False where the last step still gained much: the minimum was not reached. */
   readonly converged: boolean;
+  /** How far the constants may still be from a minimum at the end of a slow valley; null where it was reached. */
+  readonly drift: Float64Array | null;
   readonly iterations: number;
   readonly values: ModelValues;
   /** Whitened basis columns and residual at the solution. */
@@ -132,6 +141,7 @@ export function fitRegion(
   let lambda = 1e-3;
   let converged = false;
   let lastGain = Infinity;
+  let lastStep: { step: Float64Array; damping: number } | null = null;
   let iterations = 0;
   let columns = basisColumns(problem, state, current.values, current.baseline, weights, filter);
   let equations = withPriors(problem, state, normalEquations(columns, residual, maps));
@@ -154,6 +164,7 @@ export function fitRegion(
         lastGain = cost - nextCost;
         converged = lastGain < settled + 1e-6 * cost;
         [state, residual, cost] = [candidate, nextResidual, nextCost];
+        lastStep = { step, damping: lambda };
         lambda = Math.max(lambda / 10, 1e-9);
         accepted = true;
       } else lambda *= 10;
@@ -167,18 +178,35 @@ export function fitRegion(
     equations = withPriors(problem, state, normalEquations(columns, residual, maps));
   }
   const factor = choleskyFactor(equations.normal, np);
+  const inverse = factor === null ? new Float64Array(0) : choleskyInverse(factor, np);
+  // A gain of half a unit of χ² is far below the σ of the constants.
+  const reached = lastGain < 0.5 + 1e-4 * cost;
+  const drift = reached ? null : driftOf(lastStep, inverse, layout.constants.length, np);
   return {
     state,
-    inverse: factor === null ? new Float64Array(0) : choleskyInverse(factor, np),
+    inverse,
     chiSquared: squared(residual),
     cost,
-    // A slow valley of the shape parameters moves no constant: a gain of half a unit of χ² is far below their σ.
-    converged: lastGain < 0.5 + 1e-4 * cost,
+    converged: reached || drift !== null,
+    drift,
     iterations,
     values: current.values,
     columns,
     residual,
   };
+}
+
+/** How far the constants may still go along a slow valley; null where the steps are not small. */
+function driftOf(
+  last: { step: Float64Array; damping: number } | null,
+  inverse: Float64Array,
+  constants: number,
+  np: number,
+): Float64Array | null {
+  if (last === null || last.damping > lightDamping || inverse.length === 0) return null;
+  const step = last.step.subarray(0, constants);
+  const small = step.every((v, c) => Math.abs(v) < settledShare * Math.sqrt(inverse[c * np + c]!));
+  return small ? step.map((v) => stepsLeftOut * v) : null;
 }
 
 function withPriors(

@@ -56,7 +56,7 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
   const leftOut = foreignRanges(problem, first, width);
   for (const [from, to] of leftOut) maskRange(problem, weights, from, to);
   const filter = filterFrom(problem, first, weights, prepared.noiseCorrelationPoints);
-  const fit = fitRegion(problem, first.state, weights, filter, 20);
+  const fit = fitRegion(problem, first.state, weights, filter, bands.some(isMerged) ? 32 : 20);
   if (fit.inverse.length === 0)
     return { outcome: 'rank-deficient', reason: 'the spectrum cannot tell the constants apart' };
   if (!fit.converged) return { outcome: 'not-converged', reason: 'the model of the spectrum did not settle' };

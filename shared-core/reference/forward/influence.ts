@@ -38,6 +38,7 @@ export function correlatedCovariance(
       let sum = 0;
       for (let i = 0; i < weights.length; i++) sum += influences[a]![i]! * carried[b]![i]!;
       sum += priorProduct(problem.priors, rows[a]!, rows[b]!);
+      if (fit.drift !== null) sum += fit.drift[a]! * fit.drift[b]!;
       ofConstants[a * count + b] = sum;
       ofConstants[b * count + a] = sum;
     }

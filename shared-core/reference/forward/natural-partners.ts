@@ -11,6 +11,8 @@ import type { ForwardBand } from './types.ts';
 
 /** A partner whose strongest line stays below this share of the noise cannot pull the lines of the others. */
 const leastOfNoise = 0.3;
+/** A partner as common as this is found, or merged: that is for the assignment to say. */
+const mostShare = 0.05;
 
 /**
  * Rarer isotopologues of the gases asked for that nobody has found, as followers with their natural share: 13C16O under the lines of
@@ -31,7 +33,7 @@ export function naturalPartners(prepared: PreparedSpectrum, bands: readonly Forw
       const ratio = naturalAbundance(partner) / abundance;
       const known = bands.some((b) => b.band === leader.band && b.isotopologue.name === partner.name);
       const publishedPartner = publishedConstants(partner.name);
-      if (known || publishedPartner === null || !(ratio > 0) || ratio > 0.5) return [];
+      if (known || publishedPartner === null || !(ratio > 0) || ratio > mostShare) return [];
       if (Math.LN10 * ratio * Math.max(...leader.peakAbsorbance) < leastOfNoise * noise) return [];
       const constants = carried(leader.constants, own, bandConstantsFrom(publishedPartner, upper));
       const shown = leader.ms.filter((m) => isCovered(prepared, lineWavenumberPerCm(constants, m)));
