@@ -1,5 +1,5 @@
 import { mkdir, readdir, readFile, stat, writeFile } from 'node:fs/promises';
-import { join, relative, sep } from 'node:path';
+import { basename, join, relative, resolve, sep } from 'node:path';
 import { findRepeatedSpectra } from '../../shared-core/marking/repeated-spectra.ts';
 import { markSection } from '../../shared-core/marking/mark-section.ts';
 import { reportJson } from '../../shared-core/marking/report-json.ts';
@@ -10,6 +10,7 @@ import { coreVersion } from '../../shared-core/version.ts';
 import { emptyReference, type ReferenceResult } from '../backend/jobs/reference-task.ts';
 import { createWorkerPool } from '../backend/jobs/worker-pool.ts';
 import { readSectionTables, type SectionTables } from '../backend/section-folder.ts';
+import { keepInStore } from './headless-store.ts';
 import { readSource } from './read-source.ts';
 import { Unusable } from './unusable.ts';
 
@@ -23,6 +24,7 @@ export interface FolderJob {
 }
 
 const tableNames = ['submissions.csv', 'submissions.tsv', 'submissions.xlsx'];
+const sectionTable = /^(submissions|lines)\.(csv|tsv|xlsx)$/i;
 /** Files of a section that are no spectra. */
 const notSpectra =
   /^(submissions\.(csv|tsv|xlsx)|lines\.(csv|tsv|xlsx)|scheme\.json|grades\.csv|report\.json|what-was-put-in\.csv|readme(\.\w+)?|\..*|thumbs\.db)$/i;
@@ -56,6 +58,17 @@ export async function markFolder(job: FolderJob): Promise<void> {
     repeatedSpectra: findRepeatedSpectra(signatures),
   });
   await write(job, section.scheme, marked);
+  if (job.storeFile !== null) {
+    const tables = (await readdir(job.folder)).filter((e) => sectionTable.test(e));
+    await keepInStore({
+      storeFile: job.storeFile,
+      title: basename(resolve(job.folder)),
+      files: [...tables, ...names].map((name) => ({ name, path: join(job.folder, name) })),
+      scheme: section.scheme,
+      workers: job.workers,
+      say: job.say,
+    });
+  }
   const open = marked.submissions.filter((s) => s.open > 0).length;
   job.say(
     `Marked ${marked.submissions.length} submissions; ${open} with open values. grades.csv and report.json are in ${job.out}.`,

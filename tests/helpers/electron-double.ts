@@ -101,10 +101,10 @@ export const ipcRenderer = {
     const handler = recorded.handlers.get(channel) as ((...all: unknown[]) => unknown) | undefined;
     if (handler === undefined) throw new Error(`no handler for ${channel}`);
     const event = { senderFrame: recorded.frameUrl === null ? null : { url: recorded.frameUrl } };
-    return structuredClone(await handler(event, ...(structuredClone(args) as unknown[])));
+    return structuredClone(await handler(event, ...structuredClone<unknown[]>(args)));
   },
   on: (channel: string, listener: (event: unknown, payload: unknown) => void): void => {
-    const set = rendererListeners.get(channel) ?? new Set<(event: unknown, payload: unknown) => void>();
+    const set = rendererListeners.get(channel) ?? new Set();
     set.add(listener);
     rendererListeners.set(channel, set);
   },

@@ -67,7 +67,6 @@ export async function torture(kills: number, seed: number): Promise<TortureCount
   };
   const later = laterMigrations(folder);
   const all: Fact[] = [];
-  const store = join(folder, 'store', 'sections.sqlite');
   mkdirSync(join(folder, 'store'));
   try {
     for (let k = 0; k < kills; k++) {
