@@ -13,6 +13,9 @@ export interface MatchResult {
   }[];
 }
 
+const namedInTable = 'named in the table';
+const severalOfName = 'several files have the name that the table gives';
+
 const baseOf = (name: string): string => name.slice(name.lastIndexOf('/') + 1).toLowerCase();
 const stemOf = (name: string): string => baseOf(name).replace(/\.[a-z0-9]{1,5}$/i, '');
 const escaped = (text: string): string => text.replace(/[.*+?^${}()|[\]\\]/g, '\\$&');
@@ -39,8 +42,12 @@ export function matchFiles(
       const hits = byName(fileNames, wanted);
       if (hits.length === 1) {
         found.push(hits[0]!);
-        claim(hits[0]!, s, 'named in the table');
-      } else missing.push({ student: s.student, attempt: s.attempt, wanted });
+        claim(hits[0]!, s, namedInTable);
+        continue;
+      }
+      missing.push({ student: s.student, attempt: s.attempt, wanted });
+      // Several files of that name in different folders: a person says which.
+      for (const hit of hits) claim(hit, s, severalOfName);
     }
     if (s.spectra.length === 0) {
       for (const [file, reason] of byKey(fileNames, s, titles, submissions)) {
@@ -65,12 +72,12 @@ export function matchFiles(
     }
     const students = [...new Set(own.map((o) => o.student))];
     // A file that the table gives to several students is shared (a pair); one that only its name gives to several is not clear.
-    const shared = own.every((o) => o.reason === 'named in the table');
+    const shared = own.every((o) => o.reason === namedInTable);
     return {
       fileName,
       student: first.student,
       attempt: first.attempt,
-      state: students.length > 1 && !shared ? 'ambiguous' : 'matched',
+      state: (students.length > 1 && !shared) || first.reason === severalOfName ? 'ambiguous' : 'matched',
       reason:
         students.length > 1 && shared ? `named in the table by ${students.length} students` : first.reason,
       candidates: students,
