@@ -81,18 +81,20 @@ function belongs(text: string, heading: string): boolean {
 function belowOf(header: readonly string[], row: readonly string[]): readonly string[] | null {
   const texts = row.filter((t) => t !== '');
   const fits = texts.filter(
-    (t) =>
-      isUnit(t.replace(/^[([]|[)\]]$/g, '')) ||
-      isGas(t) ||
-      /^(value|wert|valeur|valor|±|u|σ|uncertainty|error)$/i.test(t),
+    (t) => isUnit(bare(t)) || isGas(t) || /^(value|wert|valeur|valor|±|u|σ|uncertainty|error)$/i.test(t),
   );
-  if (texts.length < 2 || fits.length < texts.length) return null;
+  const bracketed = texts.filter((t) => /^[([].*[)\]]$/.test(t));
+  const rest = texts.filter((t) => !fits.includes(t) && !bracketed.includes(t));
+  if (fits.length < 2 || rest.length > 0) return null;
   // A long table may hold a gas and a unit in its first row of values.
-  if (row.filter((t, i) => isUnit(t) && header[i] !== '').length === 0 && !texts.every(isGas)) return null;
-  return row[0] === '' ? row.map((t) => t.replace(/^[([]|[)\]]$/g, '')) : null;
+  if (row.filter((t, i) => isUnit(bare(t)) && header[i] !== '').length === 0 && !texts.every(isGas))
+    return null;
+  return row[0] === '' || /^[([].*[)\]]$/.test(row[0]!) ? row.map(bare) : null;
 }
 
 const isGas = (text: string): boolean => {
   const taken = takeIsotopologue(text);
   return taken.isotopologue !== null && taken.text === '';
 };
+
+const bare = (text: string): string => text.replace(/^[([]|[)\]]$/g, '');

@@ -12,7 +12,7 @@ export const withUncertainty =
 
 /** Words by which a header names a role that is no quantity; English, German, French, Spanish. First match counts. */
 export const roleWords = [
-  ['student', /^(student|students?[ _-]?(id|no|nr|number|key|code)?\.?|id|key|roster key|matr(ikel|iculation)[ _-]?(nummer|nr|number|no)?\.?|user(name)?|n[°ºo]\.?\s*(d['’])?[ée]tudiant.*|num[ée]ro (d['’])?[ée]tudiant|matr[ií]cula|kennung|clave|cl[ée])$/i],
+  ['student', /^(student|[ée]tudiante?|estudiante|alumn[oa]|studierende[rn]?|students?[ _-]?(id|no|nr|number|key|code)?\.?|id|key|roster key|matr(ikel|iculation)[ _-]?(nummer|nr|number|no)?\.?|user(name)?|n[°ºo]\.?\s*(d['’])?[ée]tudiant.*|num[ée]ro (d['’])?[ée]tudiant|matr[ií]cula|kennung|clave|cl[ée])$/i],
   ['name', /^((full|last|first|family|given|sur|student|your)[ -]?)*(name|nom|nombre|nachname|vorname|familienname|apellidos?|pr[ée]nom)s?( (de famille|de l['’][ée]tudiant|complet|completo|y apellidos|of (the )?student|des studierenden))?$/i],
   ['group', /^(lab[ _-]?)?(group|pair|team|bench|gruppe|paar|groupe|bin[oô]me|grupo|pareja)([ _-]?(no|nr|number|id))?\.?$/i],
   ['attempt', /^(attempt|try|version|versuch|essai|tentative|intento)([ _-]?(no|nr|number))?\.?$/i],

@@ -25,7 +25,7 @@ interface Row {
 /**
  * Submissions of a table, wide (a row each) or long (a row per value). Rows that cannot be used are told, with their number.
  *
- * A row without a key goes by its name; a second row of the same student, isotopologue and no attempt column is the next attempt.
+ * A row without a key goes by its name, else by its group; a second row of the same student, isotopologue and no attempt column is the next attempt.
  */
 export function readSubmissions(
   table: RawTable,
@@ -44,7 +44,7 @@ export function readSubmissions(
   const drafts: Submission[] = [];
   for (const row of rows) {
     const text = (role: ColumnRole['role']): string => cellOf(row, understanding, role);
-    const student = text('student') || namesOf(row, understanding);
+    const student = text('student') || namesOf(row, understanding) || text('group');
     if (repeatsHeader(row.cells, understanding)) continue;
     if (isSummary(student)) {
       problems.push({

@@ -78,15 +78,22 @@ function askedIfNumeric(
 function quantityColumn(
   base: { index: number; header: string; firstValues: readonly string[] },
   role: Extract<ColumnRole, { role: 'quantity' }>,
-  reason: string,
+  headerReason: string,
   alternatives: readonly ColumnRole[],
   cells: readonly string[],
 ): ColumnUnderstanding {
+  let reason = headerReason;
   const readings = [role, ...alternatives.filter((a) => a.role === 'quantity')];
   const fitting = readings.filter((r) => shareFitting(cells, r.quantity, r.unit) > 0.5);
   // Two readings of the same size (Be or B_0) cannot be told apart by size: that is asked.
   const chosen = fitting[0] ?? role;
-  const ambiguous = fitting.length > 1;
+  // A whole class outside any usual size: the columns may stand in each other's place.
+  const odd =
+    cells.filter((c) => c !== '').length >= 4 &&
+    fitting.length === 0 &&
+    shareFitting(cells, role.quantity, role.unit) === 0;
+  const ambiguous = fitting.length > 1 || odd;
+  if (odd) reason += '; but none of its values has a usual size for that';
   if (chosen.unit !== null || cellsCarryUnits(cells)) {
     return { ...base, role: chosen, reason, ambiguous, alternatives: readings.filter((r) => r !== chosen) };
   }
@@ -149,7 +156,7 @@ function kindOf(columns: readonly ColumnUnderstanding[]): { kind: TableKind; rea
   if (lineColumns) return { kind: 'lines', reason: 'it has wavenumbers with m or J' };
   if (has('quantity-name') && has('value'))
     return { kind: 'submissions-long', reason: 'it has a column of quantities and one of values' };
-  if (has('quantity') && (has('student') || has('name') || has('spectrum'))) {
+  if (has('quantity') && (has('student') || has('name') || has('group') || has('spectrum'))) {
     return { kind: 'submissions-wide', reason: 'it has a row per submission with columns of quantities' };
   }
   if (has('student') && (has('name') || has('group')))

@@ -200,6 +200,23 @@ describe('twelve messy tables', () => {
 });
 
 describe('other tables', () => {
+  it('with columns in each other’s place are asked about: no value has a usual size', async () => {
+    const rows = ['S1,127.5,10.59', 'S2,127.4,10.6', 'S3,127.1,10.58', 'S4,127.6,10.4'];
+    const { understood } = await open(utf8(['student,Be (cm-1),re (pm)', ...rows].join('\n')));
+    expect(asked(understood)).toEqual(['re (pm)']);
+  });
+
+  it('that know groups only go by the group; a row of bracketed units is no submission', async () => {
+    const { table, understood } = await open(
+      utf8('Group,Be,re\n(no.),(cm-1),(Å)\nG1,10.59,1.275\nG2,10.6,1.28\n'),
+    );
+    expect(asked(understood)).toEqual([]);
+    expect(seen(readSubmissions(table, understood).submissions)).toEqual([
+      'G1#1 ? Be 10.59, ? re 127.5',
+      'G2#1 ? Be 10.6, ? re 128',
+    ]);
+  });
+
   it('of lines give m from branch and J, and tell rows that cannot be used', async () => {
     const { table, understood } = await open(
       utf8(
