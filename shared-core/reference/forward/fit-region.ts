@@ -1,13 +1,11 @@
 import { choleskyFactor, choleskyInverse, choleskySolve } from '../../fitting/cholesky.ts';
-import { normalEquations, whitened, type Column, type ParameterMap } from './columns.ts';
-import type { FineGrid } from './grid.ts';
+import { normalEquations, whitened, type Column } from './columns.ts';
 import { lowerBound } from './line-columns.ts';
-import type { Layout } from './layout.ts';
-import { addPriors, penaltyOf, type Prior } from './priors.ts';
-import { baselineAt, type RegionData } from './region-data.ts';
-import { modelState, stepped, type Limits, type RegionState } from './region-state.ts';
+import { addPriors, penaltyOf } from './priors.ts';
+import type { RegionProblem } from './region-problem.ts';
+import { baselineAt } from './region-data.ts';
+import { modelState, stepped, type RegionState } from './region-state.ts';
 import { modelTransmittance, transmittanceOnly, type ModelValues } from './transmittance.ts';
-import type { ForwardBand } from './types.ts';
 
 /** A step that gains less than this in χ² moves no constant by more than a tenth of its σ. */
 const settled = 0.01;
@@ -18,18 +16,6 @@ const settled = 0.01;
 const settledShare = 0.15;
 const stepsLeftOut = 10;
 const lightDamping = 1e-2;
-
-export interface RegionProblem {
-  readonly bands: readonly ForwardBand[];
-  readonly layout: Layout;
-  readonly maps: readonly ParameterMap[];
-  readonly data: RegionData;
-  readonly knots: Float64Array;
-  readonly grid: FineGrid;
-  readonly limits: Limits;
-  readonly start: RegionState;
-  readonly priors: readonly Prior[];
-}
 
 export interface RegionFit {
   readonly state: RegionState;

@@ -1,5 +1,6 @@
 import { lineWavenumberPerCm } from '../../molecule/index.ts';
-import { fitRegion, type RegionFit, type RegionProblem } from './fit-region.ts';
+import { fitRegion, type RegionFit } from './fit-region.ts';
+import type { RegionProblem } from './region-problem.ts';
 import { correlatedCovariance } from './influence.ts';
 import { foreignRanges, lineDistances, pointResiduals, robustSigma } from './foreign.ts';
 import { constantKeys, isMerged } from './layout.ts';

@@ -1,4 +1,5 @@
-import type { RegionProblem, RegionFit } from './fit-region.ts';
+import type { RegionFit } from './fit-region.ts';
+import type { RegionProblem } from './region-problem.ts';
 import { modelState } from './region-state.ts';
 import { baselineAt } from './region-data.ts';
 

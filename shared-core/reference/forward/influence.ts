@@ -1,5 +1,6 @@
 import { autocorrelation } from './whiten.ts';
-import type { RegionFit, RegionProblem } from './fit-region.ts';
+import type { RegionFit } from './fit-region.ts';
+import type { RegionProblem } from './region-problem.ts';
 import { priorProduct } from './priors.ts';
 
 /** Delays, in points, over which what is left of the correlation is followed. */

@@ -1,6 +1,7 @@
 import { choleskyFactor, choleskyInverse, choleskySolve } from '../../fitting/cholesky.ts';
 import { dot } from './columns.ts';
-import type { RegionFit, RegionProblem } from './fit-region.ts';
+import type { RegionFit } from './fit-region.ts';
+import type { RegionProblem } from './region-problem.ts';
 import { modelState } from './region-state.ts';
 import type { ForwardLine } from './types.ts';
 

@@ -1,16 +1,7 @@
 import { relativeLineStrength } from '../../molecule/index.ts';
-import type { RegionProblem } from './fit-region.ts';
+import type { Prior, RegionProblem } from './region-problem.ts';
 import { isMerged } from './layout.ts';
 import type { RegionState } from './region-state.ts';
-
-/** Knowledge about some parameters that is not in the points: penalty yᵀWy, y the distance from what is expected. */
-export interface Prior {
-  /** Parameters concerned. */
-  readonly at: readonly number[];
-  /** W, square, row-major. */
-  readonly weight: Float64Array;
-  readonly distance: (state: RegionState) => readonly number[];
-}
 
 /** Spread of ln(strength) about the law of line strengths (temperature, what the law leaves out). */
 const strengthLawSigma = 0.08;

@@ -5,7 +5,7 @@ import { kernelReachPerCm } from './instrument.ts';
 import { isMerged, lineCentres, makeLayout, parameterMaps } from './layout.ts';
 import { makePriors } from './priors.ts';
 import { baselineKnots, regionData } from './region-data.ts';
-import type { RegionProblem } from './fit-region.ts';
+import type { RegionProblem } from './region-problem.ts';
 import type { RegionState } from './region-state.ts';
 import type { ForwardBand } from './types.ts';
 
