@@ -57,7 +57,11 @@ function killedRun(
 }
 
 /** Kills a working program again and again, and looks at the store after each. */
-export async function torture(kills: number, seed: number): Promise<TortureCounts> {
+export async function torture(
+  kills: number,
+  seed: number,
+  tell: (counts: TortureCounts) => void = () => undefined,
+): Promise<TortureCounts> {
   const folder = mkdtempSync(join(tmpdir(), 'rovimark-torture-'));
   const counts: TortureCounts = { kills: 0, killedAfter: {}, acknowledged: 0, faults: [] };
   let state = seed;
@@ -88,6 +92,7 @@ export async function torture(kills: number, seed: number): Promise<TortureCount
         ...inspect(file, migrations, migrating ? [...all, ...facts] : all).map((f) => `kill ${k + 1}: ${f}`),
       );
       if (migrating) rmSync(place, { recursive: true });
+      tell(counts);
     }
     if (!readdirSync(join(folder, 'store')).includes('sections.sqlite'))
       counts.faults.push('the store is gone');

@@ -3,7 +3,10 @@ import { torture } from './torture-rounds.ts';
 
 const [kills = '200', seed = '1'] = process.argv.slice(2);
 const start = performance.now();
-const counts = await torture(Number(kills), Number(seed));
+const counts = await torture(Number(kills), Number(seed), (c) => {
+  if (c.kills % 20 === 0)
+    console.error(`${c.kills} kills, ${c.acknowledged} acknowledged, ${c.faults.length} faults`);
+});
 for (const fault of counts.faults) console.log(fault);
 for (const [fact, count] of Object.entries(counts.killedAfter).sort(([, a], [, b]) => b - a))
   console.log(`${String(count).padStart(5)} killed after: ${fact}`);
