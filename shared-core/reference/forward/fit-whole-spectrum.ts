@@ -13,6 +13,8 @@ import { whiteningFilter } from './whiten.ts';
 /** Room beside the outermost lines of a region, in line widths and in cm-1. */
 const padWidths = 8;
 const padPerCm = 6;
+/** Steps after which a start with side lobes must be ahead of the one without. */
+const sharpTrial = 6;
 /**
  * σ of the centre of a merged doublet in units of its splitting: stray light or a clipped floor changes how black its partners look,
  * and with it their shares, by some per cent.
@@ -44,8 +46,9 @@ export function fitWholeSpectrum(input: ForwardInput): ForwardOutcome {
   const plain = Float64Array.of(1);
   let first = fitRegion(problem, problem.start, weights, plain, 16);
   if (first.chiSquared > 1.2 * problem.data.observed.length) {
-    const other = fitRegion(problem, sharpStart(prepared, problem), weights, plain, 16);
-    if (other.chiSquared < first.chiSquared) first = other;
+    // Side lobes make every step dear: a few show whether this instrument is the better one.
+    const other = fitRegion(problem, sharpStart(prepared, problem), weights, plain, sharpTrial);
+    if (other.chiSquared < first.chiSquared) first = fitRegion(problem, other.state, weights, plain, 10);
   }
   // Merged partners: thin and black lines can look alike; the better one counts.
   if (bands.some(isMerged)) {

@@ -48,12 +48,22 @@ export function columnOf(
     let s = 0;
     const k0 = Math.max(0, Math.ceil(offset - last));
     const k1 = Math.min(n - 1, Math.floor(offset + last));
-    for (let k = k0; k <= k1; k++) {
-      const u = Math.abs(offset - k);
-      const j = u | 0;
-      const w = kernel[j]! + (u - j) * (kernel[j + 1]! - kernel[j]!);
-      c += w * dCentre[k]!;
-      s += w * dStrength[k]!;
+    if (grid.firstSample !== null) {
+      // Even samples are points of the fine grid: nothing to interpolate.
+      const centre = Math.round(offset);
+      for (let k = k0; k <= k1; k++) {
+        const w = kernel[k < centre ? centre - k : k - centre]!;
+        c += w * dCentre[k]!;
+        s += w * dStrength[k]!;
+      }
+    } else {
+      for (let k = k0; k <= k1; k++) {
+        const u = Math.abs(offset - k);
+        const j = u | 0;
+        const w = kernel[j]! + (u - j) * (kernel[j + 1]! - kernel[j]!);
+        c += w * dCentre[k]!;
+        s += w * dStrength[k]!;
+      }
     }
     byCentre[i - first] = c;
     byStrength[i - first] = s;
