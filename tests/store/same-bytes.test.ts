@@ -2,7 +2,7 @@ import { execFileSync } from 'node:child_process';
 import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import type {
   Envelope,
   IntakeView,
@@ -41,6 +41,9 @@ afterAll(async () => {
   await backend.close();
   rmSync(folder, { recursive: true, force: true });
 });
+
+// Fits of a whole section take their time on a busy machine.
+vi.setConfig({ testTimeout: 240_000 });
 
 describe('the example section through the back end', () => {
   let sectionId = 0;

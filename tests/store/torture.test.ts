@@ -7,4 +7,4 @@ it('a store survives being killed at random moments with everything that was ack
   expect(counts.faults).toEqual([]);
   expect(counts.kills).toBe(5);
   expect(counts.acknowledged).toBeGreaterThan(5);
-});
+}, 240_000);
